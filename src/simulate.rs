@@ -4,11 +4,16 @@ use std::collections::BTreeMap;
 
 use crate::integrate::chain::{Trajectory, run_sections};
 use crate::integrate::error::NumericsError;
+use crate::integrate::work::Work;
+use crate::judge::accept::{self, Judged};
+use crate::judge::warning::{self, Warning, read_acknowledged};
 use crate::model::plant::{self, Plant};
+use crate::results::axial::{self, Table};
+use crate::results::view::RunView;
+use crate::results::{Figure, HotSpot, Value, catalogue};
 use crate::spec::include::{FileFormat, ReadFile, load};
-use crate::spec::{
-    About, Block, Fields, Gathered, Key, Need, Node, Reader, Reported, SpecError, Takes, edit, like,
-};
+use crate::spec::{About, Block, Fields, Gathered, Key, Need, Node, Reader, Reported, SpecError, Takes, edit, like};
+use crate::units::Dimension;
 
 /// A spec that was read: everything a run needs, and what the reading gathered.
 #[derive(Clone, Debug)]
@@ -19,6 +24,10 @@ pub struct Spec {
     pub note: Option<String>,
     /// The reactor.
     pub plant: Plant,
+    /// What a passing design must show.
+    pub accept: Vec<accept::Limit>,
+    /// Warnings that are accepted, by code, and why.
+    pub acknowledged: BTreeMap<String, String>,
     /// The resolved listing, where numbers come from, warnings.
     pub gathered: Gathered,
 }
@@ -89,27 +98,17 @@ pub const TOP: About = About {
 ///
 /// # Errors
 /// All mistakes that were found, in the order of the files.
-pub fn read_spec(
-    name: &str,
-    bytes: &[u8],
-    read: ReadFile<'_>,
-    sets: &[String],
-) -> Result<Spec, Vec<SpecError>> {
+pub fn read_spec(name: &str, bytes: &[u8], read: ReadFile<'_>, sets: &[String]) -> Result<Spec, Vec<SpecError>> {
     let root = resolved_tree(name, bytes, read, sets)?;
     let reader = Reader::new(sources(&root));
     let spec = read_tree(&reader, &root);
     let gathered = reader.end()?;
-    let (title, note, plant) = spec.expect("a reader without mistakes leaves a spec");
-    Ok(Spec { title, note, plant, gathered })
+    let spec = spec.expect("a reader without mistakes leaves a spec");
+    Ok(Spec { gathered, ..spec })
 }
 
 /// The tree of a spec with its parts joined, overrides and sets applied, and likes copied.
-fn resolved_tree(
-    name: &str,
-    bytes: &[u8],
-    read: ReadFile<'_>,
-    sets: &[String],
-) -> Result<Node, Vec<SpecError>> {
+fn resolved_tree(name: &str, bytes: &[u8], read: ReadFile<'_>, sets: &[String]) -> Result<Node, Vec<SpecError>> {
     let mut root = load(name, bytes, read, &[FileFormat::Spec])?.root;
     let mut problems = edit::apply_override(&mut root);
     problems.extend(sets.iter().filter_map(|argument| edit::set_from_text(&mut root, argument).err()));
@@ -123,19 +122,28 @@ fn sources(root: &Node) -> BTreeMap<String, String> {
     entries.iter().filter_map(|entry| Some((entry.key.clone(), entry.node.text()?.to_owned()))).collect()
 }
 
-type Parts = (Option<String>, Option<String>, Plant);
-
-fn read_tree(reader: &Reader, root: &Node) -> Result<Parts, Reported> {
+/// The spec of a tree, without what the reader gathers.
+fn read_tree(reader: &Reader, root: &Node) -> Result<Spec, Reported> {
     let fields = Block::top(reader, root).open(&TOP);
     let _ = fields.text("format");
     let (title, note) = (fields.text("title"), fields.text("note"));
     let _ = (fields.child("include"), fields.child("override"));
     check_sources(&fields);
-    let plant = Plant::read(&fields);
-    let _ = (fields.child("accept"), fields.child("acknowledge"));
-    let plant = fields.take(plant);
+    let plant = fields.take(Plant::read(&fields));
+    let acknowledged = fields.child("acknowledge").map(|child| fields.take(read_acknowledged(&child)));
+    let accept = match (fields.child("accept"), &plant) {
+        (Some(child), Some(plant)) => fields.take(accept::Limit::read_all(&child, plant)),
+        _ => Some(Vec::new()),
+    };
     fields.finish(())?;
-    Ok((title, note, plant.ok_or(Reported)?))
+    Ok(Spec {
+        title,
+        note,
+        plant: plant.ok_or(Reported)?,
+        accept: accept.ok_or(Reported)?,
+        acknowledged: acknowledged.flatten().unwrap_or_default(),
+        gathered: Gathered::default(),
+    })
 }
 
 /// Sources are names with texts.
@@ -148,6 +156,61 @@ fn check_sources(fields: &Fields<'_>) {
     }
 }
 
+/// A finished run, or one that a limit ended: figures, judgement, tables.
+#[derive(Clone, Debug)]
+pub struct Run {
+    /// Every quantity of the catalogue, in its order.
+    pub figures: Vec<Figure>,
+    /// The hottest point.
+    pub hot_spot: HotSpot,
+    /// Where the run ended, and what was reached there.
+    pub end: End,
+    /// The bounds of `accept`, held against the figures.
+    pub accept: Vec<Judged>,
+    /// What is in doubt.
+    pub warnings: Vec<Warning>,
+    /// What it cost.
+    pub work: Work,
+    /// Profiles for files, if asked for.
+    pub tables: Option<Tables>,
+}
+
+/// Where a run ended.
+#[derive(Clone, Debug)]
+pub struct End {
+    /// The limit that ended it, by its path; none at the outlet.
+    pub limit: Option<&'static str>,
+    /// The section.
+    pub section: String,
+    /// z from the inlet [m].
+    pub z: f64,
+    /// Quantities of the place.
+    pub figures: Vec<Figure>,
+}
+
+/// Profiles for files.
+#[derive(Clone, Debug)]
+pub struct Tables {
+    /// One row a station.
+    pub along_z: Table,
+    /// One row a stream tube of a station.
+    pub over_z_and_r: Table,
+}
+
+impl Run {
+    /// A figure by its name.
+    #[must_use]
+    pub fn figure(&self, name: &str) -> Option<&Figure> {
+        self.figures.iter().find(|figure| figure.name == name)
+    }
+
+    /// The number of a figure by its name.
+    #[must_use]
+    pub fn number(&self, name: &str) -> Option<f64> {
+        self.figure(name)?.value.number()
+    }
+}
+
 /// Integrates a plant.
 ///
 /// # Errors
@@ -155,4 +218,33 @@ fn check_sources(fields: &Fields<'_>) {
 pub fn integrate(plant: &Plant) -> Result<Trajectory<'_>, NumericsError> {
     let places: Vec<f64> = plant.output.places.iter().map(|place| place.z).collect();
     run_sections(plant, &places)
+}
+
+/// Runs a spec; with tables if they are wanted.
+///
+/// # Errors
+/// The integrator gave up; a limit that was left is no error but a result.
+pub fn run(spec: &Spec, with_tables: bool) -> Result<Run, NumericsError> {
+    let trajectory = integrate(&spec.plant)?;
+    let view = RunView::new(&spec.plant, &trajectory);
+    let mut figures = catalogue::figures(&view);
+    let hot_spot = HotSpot::of(&view, 0..view.sections.len());
+    let read = &spec.gathered.warnings;
+    let warnings = warning::warnings(&view, &figures, &hot_spot, read, &spec.acknowledged);
+    let open = warnings.iter().filter(|warning| warning.acknowledged.is_none()).count();
+    #[expect(clippy::cast_precision_loss, reason = "warnings are few")]
+    let count = Value::Number(open as f64);
+    figures.push(Figure { name: accept::WARNINGS_COUNT.to_owned(), dimension: Dimension::RATIO, value: count });
+    let accept = spec.accept.iter().map(|limit| limit.judge(&figures, view.is_complete())).collect();
+    let station = view.end();
+    let end = End {
+        limit: trajectory.ended().map(|limit| limit.path()),
+        section: station.leg.system.section.name.clone(),
+        z: station.z,
+        figures: catalogue::place_figures(station),
+    };
+    let tables =
+        with_tables.then(|| Tables { along_z: axial::along_z(&view), over_z_and_r: axial::over_z_and_r(&view) });
+    let work = trajectory.work;
+    Ok(Run { figures, hot_spot, end, accept, warnings, work, tables })
 }

@@ -21,8 +21,7 @@ impl System<'_> {
     /// Shape of the Jacobian.
     #[must_use]
     pub fn shape(&self) -> Shape {
-        let coupling =
-            if self.material().mixture.has_one_diffusivity() { Coupling::Diagonal } else { Coupling::Full };
+        let coupling = if self.material().mixture.has_one_diffusivity() { Coupling::Diagonal } else { Coupling::Full };
         Shape { n_tubes: self.layout.n_tubes, n_vars: self.layout.n_vars(), n_tail: INTEGRALS.len(), coupling }
     }
 

@@ -91,8 +91,7 @@ fn slopes(x: &[f64], y: &[f64]) -> Vec<f64> {
     let n = x.len();
     let h: Vec<f64> = x.windows(2).map(|w| w[1] - w[0]).collect();
     let d: Vec<f64> = y.windows(2).zip(&h).map(|(w, h)| (w[1] - w[0]) / h).collect();
-    let (mut lower, mut diagonal, mut upper, mut right) =
-        (vec![0.0; n], vec![0.0; n], vec![0.0; n], vec![0.0; n]);
+    let (mut lower, mut diagonal, mut upper, mut right) = (vec![0.0; n], vec![0.0; n], vec![0.0; n], vec![0.0; n]);
     for k in 1..n - 1 {
         lower[k] = h[k];
         diagonal[k] = 2.0 * (h[k - 1] + h[k]);

@@ -1,10 +1,10 @@
 //! The linear solver of the implicit steps: block elimination over the stream tubes.
 //!
 //! (I − c J) x = b is eliminated from the innermost and the outermost tube
-//! towards the tube in the middle and substituted back: two independent chains of
-//! small products take half the time of one chain twice as long. The integrals
-//! follow from the tubes' solution. Each call chooses once among kernels compiled
-//! for 1 to 12 variables, and a plain one for more.
+//! towards the tube in the middle and substituted back. Two independent chains let
+//! blocks be inverted in pairs, a quarter quicker, and solve a sixth quicker than
+//! one chain (6 variables). The integrals follow from the tubes' solution. Each call
+//! chooses once among kernels compiled for 1 to 12 variables, and a plain one for more.
 
 use std::cell::RefCell;
 

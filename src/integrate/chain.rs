@@ -66,8 +66,8 @@ pub fn run_sections<'p>(plant: &'p Plant, places: &[f64]) -> Result<Trajectory<'
         let state = inlet.take().unwrap_or_else(|| system.layout.uniform(&plant.feed.state));
         let targets = targets(plant, start, section.length, places);
         let limits = Limit::of(&system, pressure);
-        let leg = march(&system, state, limits, &targets)
-            .map_err(|error| NumericsError { z: start + error.z, ..error })?;
+        let leg =
+            march(&system, state, limits, &targets).map_err(|error| NumericsError { z: start + error.z, ..error })?;
         work.add(leg.work);
         let leg = SectionLeg { system, start, pressure, leg };
         let outlet = &leg.outlet().state;

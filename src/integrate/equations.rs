@@ -4,7 +4,7 @@ use std::cell::Cell;
 
 use diffsol::{
     ConstantOp, NalgebraContext, NalgebraVec, NonLinearOp, NonLinearOpJacobian, OdeEquations, OdeEquationsRef, Op,
-    ParameterisedOp, UnitCallable, Vector,
+    ParameterisedOp, UnitCallable,
 };
 
 use super::matrix::{BlockTridiagonal, Pattern};

@@ -91,7 +91,12 @@ pub const POLYMER: About = About {
             meaning: "M_w/M_n",
         },
         Key { name: "ends", takes: Takes::Other("groups"), need: Need::Later, meaning: "end groups" },
-        Key { name: "composition", takes: Takes::Other("monomers"), need: Need::Later, meaning: "composition of a copolymer" },
+        Key {
+            name: "composition",
+            takes: Takes::Other("monomers"),
+            need: Need::Later,
+            meaning: "composition of a copolymer",
+        },
     ],
 };
 
@@ -255,13 +260,7 @@ fn read_values(
     (!failed).then_some((values, rest))
 }
 
-fn counts_in_moles(
-    fields: &Fields<'_>,
-    k: usize,
-    key: &'static str,
-    species: &SpeciesList,
-    scheme: &Scheme,
-) -> bool {
+fn counts_in_moles(fields: &Fields<'_>, k: usize, key: &'static str, species: &SpeciesList, scheme: &Scheme) -> bool {
     let of = &species.items[k];
     if scheme.polymer() == Some(k) {
         let with = format!("`{key}`: a polymer has no single molar mass, give `mass_fractions`");
@@ -280,13 +279,7 @@ fn counts_in_moles(
     true
 }
 
-fn check_sum(
-    fields: &Fields<'_>,
-    block: &Block<'_>,
-    key: &str,
-    values: &[(usize, f64)],
-    rest: Option<usize>,
-) -> bool {
+fn check_sum(fields: &Fields<'_>, block: &Block<'_>, key: &str, values: &[(usize, f64)], rest: Option<usize>) -> bool {
     let sum: f64 = values.iter().map(|(_, value)| value).sum();
     let (at, key) = (block.place(), key.to_owned());
     if rest.is_none() && (sum - 1.0).abs() > SUM_TOLERANCE {

@@ -9,7 +9,12 @@ pub const ABOUT: About = About {
     equation: "",
     source: "",
     keys: &[
-        Key { name: "temperature", takes: Takes::Block(&TEMPERATURE), need: Need::Optional, meaning: "in any stream tube" },
+        Key {
+            name: "temperature",
+            takes: Takes::Block(&TEMPERATURE),
+            need: Need::Optional,
+            meaning: "in any stream tube",
+        },
         Key {
             name: "pressure",
             takes: Takes::Block(&PRESSURE),

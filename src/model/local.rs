@@ -160,6 +160,38 @@ impl Material {
         Fluid { temperature: state[self.n_amounts()], polymer_fraction, molar_mass: self.smooth_molar_mass(state) }
     }
 
+    /// Lifetime of a radical where radicals are quasi-steady, 1/(k_t λ₀ + T_r) [s].
+    #[must_use]
+    pub fn radical_lifetime(&self, state: &[f64]) -> Option<f64> {
+        let Scheme::FreeRadical(scheme) = &self.chemistry.scheme else { return None };
+        let mut work = self.workspace();
+        self.evaluate(state, &mut work);
+        let temperature = state[self.n_amounts()];
+        let local = Local {
+            concentrations: &work.concentrations,
+            temperature,
+            inverse: temperature.max(COLDEST).recip(),
+            polymer_fraction: work.fractions[self.n_species()],
+            monomer_fraction: work.fractions[scheme.monomer],
+        };
+        let mut sources = vec![0.0; self.n_amounts()];
+        Some(scheme.radicals(&local, &mut sources).lifetime())
+    }
+
+    /// Every law with a range of temperature that was stated or that a table has, by its path [K].
+    #[must_use]
+    pub fn ranges(&self) -> Vec<(String, (f64, f64))> {
+        let mut all = self.mixture.ranges().to_vec();
+        let reactions = self.chemistry.reactions.iter();
+        all.extend(reactions.filter_map(|reaction| {
+            Some((format!("reactions.{}.rate_constant", reaction.name), reaction.rate_constant.range()?))
+        }));
+        if let Scheme::FreeRadical(scheme) = &self.chemistry.scheme {
+            all.extend(scheme.ranges().map(|(key, range)| (format!("polymerization.{key}"), range)));
+        }
+        all
+    }
+
     /// Properties and sources of one stream tube.
     ///
     /// | symbol | here | unit | shape |

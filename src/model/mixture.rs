@@ -184,9 +184,8 @@ impl MixtureBlock {
         let which = [Which::Density, Which::HeatCapacity, Which::Conductivity, Which::Diffusivity];
         let laws = which.map(|which| (which, read_law(&fields, which)));
         let viscosity = fields.child("viscosity").and_then(|child| fields.take(Viscosity::read(&child)));
-        let closing = fields
-            .child("closing_species")
-            .and_then(|child| fields.take(child.choose("species", &species.names)));
+        let closing =
+            fields.child("closing_species").and_then(|child| fields.take(child.choose("species", &species.names)));
         for (which, law) in &laws {
             let own = species.items.iter().find(|species| species.law(*which).is_some());
             if let (Some(_), Some(own)) = (law, own) {

@@ -101,9 +101,8 @@ impl Output {
                 }
             }
         }
-        let conversion_of = fields
-            .child("conversion_of")
-            .and_then(|child| fields.take(child.choose("species", &species.names)));
+        let conversion_of =
+            fields.child("conversion_of").and_then(|child| fields.take(child.choose("species", &species.names)));
         fields.finish(Self { stations, places, conversion_of })
     }
 }

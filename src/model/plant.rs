@@ -22,18 +22,68 @@ const VOLUME_TOLERANCE: f64 = 1e-6;
 
 /// Keys of the spec that describe the plant; the judgement's keys join them in `simulate.rs`.
 pub const KEYS: [Key; 13] = [
-    Key { name: "duct", takes: Takes::Block(&duct::ABOUT), need: Need::Required("{shape: tube, inner_diameter: 20 mm}"), meaning: "the cross-section" },
-    Key { name: "feed", takes: Takes::Block(&feed::ABOUT), need: Need::Required("{mass_flow: 1 kg/h, temperature: 95 degC, mass_fractions: {styrene: 1}}"), meaning: "what enters" },
-    Key { name: "flow", takes: Takes::Block(&flow::ABOUT), need: Need::Required("{profile: from_viscosity}"), meaning: "how it flows" },
-    Key { name: "coolants", takes: Takes::Named(&coolant::ABOUT), need: Need::Optional, meaning: "coolants used by several walls" },
-    Key { name: "walls", takes: Takes::Kinds(wall::KINDS), need: Need::Optional, meaning: "walls used by several sections, under names of the user's" },
-    Key { name: "sections", takes: Takes::Listed(&section::ABOUT), need: Need::Required("[{name: tube, length: 4 m, wall: {kind: insulated}}]"), meaning: "lengths of duct, in the direction of flow" },
-    Key { name: "species", takes: Takes::Named(&species::ABOUT), need: Need::Required("{styrene: {formula: C8H8}}"), meaning: "substances" },
-    Key { name: "mixture", takes: Takes::Block(&mixture::ABOUT), need: Need::Optional, meaning: "properties of the whole fluid" },
+    Key {
+        name: "duct",
+        takes: Takes::Block(&duct::ABOUT),
+        need: Need::Required("{shape: tube, inner_diameter: 20 mm}"),
+        meaning: "the cross-section",
+    },
+    Key {
+        name: "feed",
+        takes: Takes::Block(&feed::ABOUT),
+        need: Need::Required("{mass_flow: 1 kg/h, temperature: 95 degC, mass_fractions: {styrene: 1}}"),
+        meaning: "what enters",
+    },
+    Key {
+        name: "flow",
+        takes: Takes::Block(&flow::ABOUT),
+        need: Need::Required("{profile: from_viscosity}"),
+        meaning: "how it flows",
+    },
+    Key {
+        name: "coolants",
+        takes: Takes::Named(&coolant::ABOUT),
+        need: Need::Optional,
+        meaning: "coolants used by several walls",
+    },
+    Key {
+        name: "walls",
+        takes: Takes::Kinds(wall::KINDS),
+        need: Need::Optional,
+        meaning: "walls used by several sections, under names of the user's",
+    },
+    Key {
+        name: "sections",
+        takes: Takes::Listed(&section::ABOUT),
+        need: Need::Required("[{name: tube, length: 4 m, wall: {kind: insulated}}]"),
+        meaning: "lengths of duct, in the direction of flow",
+    },
+    Key {
+        name: "species",
+        takes: Takes::Named(&species::ABOUT),
+        need: Need::Required("{styrene: {formula: C8H8}}"),
+        meaning: "substances",
+    },
+    Key {
+        name: "mixture",
+        takes: Takes::Block(&mixture::ABOUT),
+        need: Need::Optional,
+        meaning: "properties of the whole fluid",
+    },
     Key { name: "reactions", takes: Takes::Listed(&reaction::ABOUT), need: Need::Optional, meaning: "reactions" },
-    Key { name: "polymerization", takes: Takes::Kinds(SCHEMES), need: Need::Optional, meaning: "a polymerization scheme" },
+    Key {
+        name: "polymerization",
+        takes: Takes::Kinds(SCHEMES),
+        need: Need::Optional,
+        meaning: "a polymerization scheme",
+    },
     Key { name: "limits", takes: Takes::Block(&limits::ABOUT), need: Need::Optional, meaning: "where a run ends" },
-    Key { name: "numerics", takes: Takes::Block(&numerics::ABOUT), need: Need::Optional, meaning: "grid and tolerances" },
+    Key {
+        name: "numerics",
+        takes: Takes::Block(&numerics::ABOUT),
+        need: Need::Optional,
+        meaning: "grid and tolerances",
+    },
     Key { name: "output", takes: Takes::Block(&output::ABOUT), need: Need::Optional, meaning: "what is recorded" },
 ];
 
@@ -85,9 +135,8 @@ impl Plant {
         let species = fields.child("species").and_then(|child| fields.take(SpeciesList::read(&child)));
         let duct = fields.child("duct").and_then(|child| fields.take(Duct::read(&child)));
         let flow = fields.child("flow").and_then(|child| fields.take(Flow::read(&child)));
-        let coolants = fields
-            .child("coolants")
-            .map_or(Some(Coolants::default()), |child| fields.take(Coolants::read(&child)));
+        let coolants =
+            fields.child("coolants").map_or(Some(Coolants::default()), |child| fields.take(Coolants::read(&child)));
         let walls = fields.child("walls").map(|child| child.named()).unwrap_or_default();
         let sections = match (fields.child("sections"), &duct, &coolants) {
             (Some(child), Some(duct), Some(coolants)) => {
@@ -102,18 +151,18 @@ impl Plant {
             .child("polymerization")
             .map_or(Some(Scheme::None), |child| fields.take(Scheme::read(&child, &species)));
         let polymer = scheme.as_ref().and_then(Scheme::polymer);
-        let reactions = fields.child("reactions").map_or(Some(Vec::new()), |child| {
-            fields.take(Reaction::read_list(&child, &species, polymer))
-        });
+        let reactions = fields
+            .child("reactions")
+            .map_or(Some(Vec::new()), |child| fields.take(Reaction::read_list(&child, &species, polymer)));
         let mixture_block = fields.child_or_absent("mixture");
         let mixture = fields.take(MixtureBlock::read(&mixture_block, &species));
         let stream = match (&scheme, fields.child("feed")) {
             (Some(scheme), Some(child)) => fields.take(Stream::read(&child, &species, scheme)),
             _ => None,
         };
-        let output = sections.as_ref().and_then(|sections| {
-            fields.take(Output::read(&fields.child_or_absent("output"), &species, sections))
-        });
+        let output = sections
+            .as_ref()
+            .and_then(|sections| fields.take(Output::read(&fields.child_or_absent("output"), &species, sections)));
         let (Some(scheme), Some(reactions), Some(mixture), Some(stream), Some(flow)) =
             (scheme, reactions, mixture, stream, flow)
         else {
@@ -276,7 +325,11 @@ fn build_feed(
     let n = material.n_species();
     let polymer = material.chemistry.scheme.polymer();
     let component = |k: usize| {
-        if Some(k) == polymer { n } else { material.species.iter().position(|name| *name == species.names[k]).unwrap_or(n) }
+        if Some(k) == polymer {
+            n
+        } else {
+            material.species.iter().position(|name| *name == species.names[k]).unwrap_or(n)
+        }
     };
     let mut fractions = vec![0.0; material.n_components()];
     for (k, value) in stream.values.iter().filter(|(_, value)| *value > 0.0) {

@@ -48,7 +48,12 @@ pub const ABOUT: About = About {
             need: Need::Optional,
             meaning: "diffusivity in the mixture",
         },
-        Key { name: "viscosity", takes: Takes::Other("a law"), need: Need::Later, meaning: "viscosity of the pure species" },
+        Key {
+            name: "viscosity",
+            takes: Takes::Other("a law"),
+            need: Need::Later,
+            meaning: "viscosity of the pure species",
+        },
         Key {
             name: "free_volume",
             takes: Takes::Other("a block"),

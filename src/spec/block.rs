@@ -206,9 +206,7 @@ impl<'a> Block<'a> {
     #[must_use]
     pub fn items(&self) -> Vec<Block<'a>> {
         let items = self.tree().and_then(Node::items).unwrap_or_default();
-        let below = |(k, node): (usize, &'a Node)| {
-            self.step_to(&node.item_step(k), Step::Item(k), Held::Tree(node))
-        };
+        let below = |(k, node): (usize, &'a Node)| self.step_to(&node.item_step(k), Step::Item(k), Held::Tree(node));
         items.iter().enumerate().map(below).collect()
     }
 

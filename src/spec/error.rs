@@ -75,7 +75,12 @@ pub enum SpecError {
 
     // ---- values
     #[error("{error}")]
-    Unit { at: Place, #[source] error: UnitError, key: String },
+    Unit {
+        at: Place,
+        #[source]
+        error: UnitError,
+        key: String,
+    },
     #[error("`{text}` is not a number")]
     NotANumber { at: Place, key: String, text: String },
     #[error("`{key}` needs a whole number, but is `{text}`")]

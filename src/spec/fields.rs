@@ -169,9 +169,7 @@ impl<'a> Fields<'a> {
             }
             _ => {
                 let error = match child.node().text() {
-                    Some(text) => {
-                        SpecError::NotAFlag { at: child.place(), key: key.to_owned(), text: text.to_owned() }
-                    }
+                    Some(text) => SpecError::NotAFlag { at: child.place(), key: key.to_owned(), text: text.to_owned() },
                     None => child.wrong_shape(key, "`true` or `false`"),
                 };
                 self.problem(error);
@@ -391,7 +389,13 @@ impl<'a> Fields<'a> {
 }
 
 /// Reads one scalar as a quantity and holds it against its bound.
-pub(super) fn measure(node: &Node, path: &KeyPath, key: &str, wanted: Dimension, bound: Bound) -> Result<f64, SpecError> {
+pub(super) fn measure(
+    node: &Node,
+    path: &KeyPath,
+    key: &str,
+    wanted: Dimension,
+    bound: Bound,
+) -> Result<f64, SpecError> {
     let at = |location| Place { location, path: path.clone() };
     let Some(text) = node.text() else {
         let found = node.shape();

@@ -112,7 +112,7 @@ impl Reader {
     pub fn end(self) -> Result<Gathered, Vec<SpecError>> {
         let mut problems = self.problems.into_inner();
         if !problems.is_empty() {
-            // SORT
+            problems.sort_by_key(|error| error.at().location.bytes.start);
             return Err(problems);
         }
         Ok(Gathered {

@@ -122,19 +122,10 @@ impl Dimension {
 
     /// A quantity of these exponents; of temperatures and pressures, a difference.
     #[must_use]
-    #[expect(
-        clippy::cast_possible_truncation,
-        reason = "exponents are compared within 5e-3"
-    )]
+    #[expect(clippy::cast_possible_truncation, reason = "exponents are compared within 5e-3")]
     pub const fn new(length: f64, mass: f64, time: f64, temperature: f64, amount: f64) -> Self {
         Self {
-            exponents: [
-                length as f32,
-                mass as f32,
-                time as f32,
-                temperature as f32,
-                amount as f32,
-            ],
+            exponents: [length as f32, mass as f32, time as f32, temperature as f32, amount as f32],
             role: Role::Plain,
         }
     }
@@ -148,13 +139,7 @@ impl Dimension {
     pub const fn times(self, other: Self) -> Self {
         let [length, mass, time, temperature, amount] = self.exponents();
         let others = other.exponents();
-        Self::new(
-            length + others[0],
-            mass + others[1],
-            time + others[2],
-            temperature + others[3],
-            amount + others[4],
-        )
+        Self::new(length + others[0], mass + others[1], time + others[2], temperature + others[3], amount + others[4])
     }
 
     /// The quotient, plain like a product.
@@ -167,13 +152,7 @@ impl Dimension {
     #[must_use]
     pub const fn to_power(self, power: f64) -> Self {
         let [length, mass, time, temperature, amount] = self.exponents();
-        Self::new(
-            length * power,
-            mass * power,
-            time * power,
-            temperature * power,
-            amount * power,
-        )
+        Self::new(length * power, mass * power, time * power, temperature * power, amount * power)
     }
 
     /// A rate constant of this order, (mol/m3)^(1 − order)/s.
@@ -204,13 +183,7 @@ impl Dimension {
     /// Exponents of length, mass, time, temperature, amount.
     pub(super) const fn exponents(self) -> [f64; 5] {
         let [length, mass, time, temperature, amount] = self.exponents;
-        [
-            length as f64,
-            mass as f64,
-            time as f64,
-            temperature as f64,
-            amount as f64,
-        ]
+        [length as f64, mass as f64, time as f64, temperature as f64, amount as f64]
     }
 
     pub(super) const fn role(self) -> Role {
@@ -225,12 +198,7 @@ pub(super) fn vanishes(exponent: f64) -> bool {
 
 impl PartialEq for Dimension {
     fn eq(&self, other: &Self) -> bool {
-        self.role == other.role
-            && self
-                .exponents()
-                .into_iter()
-                .zip(other.exponents())
-                .all(|(a, b)| vanishes(a - b))
+        self.role == other.role && self.exponents().into_iter().zip(other.exponents()).all(|(a, b)| vanishes(a - b))
     }
 }
 
@@ -253,24 +221,15 @@ mod tests {
     #[test]
     fn a_temperature_is_no_difference_but_shares_its_exponents() {
         assert_ne!(Dimension::TEMPERATURE, Dimension::TEMPERATURE_DIFFERENCE);
-        assert_eq!(
-            Dimension::TEMPERATURE.plain(),
-            Dimension::TEMPERATURE_DIFFERENCE
-        );
+        assert_eq!(Dimension::TEMPERATURE.plain(), Dimension::TEMPERATURE_DIFFERENCE);
         assert_ne!(Dimension::PRESSURE_LEVEL, Dimension::PRESSURE);
         assert_ne!(Dimension::ANGLE, Dimension::RATIO);
     }
 
     #[test]
     fn exponents_are_compared_with_some_play() {
-        assert_eq!(
-            Dimension::rate_constant(1.333),
-            Dimension::rate_constant(4.0 / 3.0)
-        );
-        assert_ne!(
-            Dimension::rate_constant(1.3),
-            Dimension::rate_constant(4.0 / 3.0)
-        );
+        assert_eq!(Dimension::rate_constant(1.333), Dimension::rate_constant(4.0 / 3.0));
+        assert_ne!(Dimension::rate_constant(1.3), Dimension::rate_constant(4.0 / 3.0));
     }
 
     #[test]
@@ -283,33 +242,20 @@ mod tests {
     fn arithmetic_of_temperatures_is_plain() {
         let product = Dimension::TEMPERATURE.times(Dimension::HEAT_TRANSFER_COEFFICIENT);
         assert_eq!(product, Dimension::HEAT_FLUX);
-        assert!(
-            Dimension::TEMPERATURE
-                .over(Dimension::TEMPERATURE_DIFFERENCE)
-                .is_ratio()
-        );
+        assert!(Dimension::TEMPERATURE.over(Dimension::TEMPERATURE_DIFFERENCE).is_ratio());
     }
 
     #[test]
     fn derived_exponents_are_those_of_the_si_brochure() {
-        assert_eq!(
-            Dimension::PRESSURE,
-            Dimension::new(-1.0, 1.0, -2.0, 0.0, 0.0)
-        );
+        assert_eq!(Dimension::PRESSURE, Dimension::new(-1.0, 1.0, -2.0, 0.0, 0.0));
         assert_eq!(Dimension::POWER, Dimension::new(2.0, 1.0, -3.0, 0.0, 0.0));
-        assert_eq!(
-            Dimension::HEAT_TRANSFER_COEFFICIENT,
-            Dimension::new(0.0, 1.0, -3.0, -1.0, 0.0)
-        );
+        assert_eq!(Dimension::HEAT_TRANSFER_COEFFICIENT, Dimension::new(0.0, 1.0, -3.0, -1.0, 0.0));
     }
 
     #[test]
     fn a_dimension_reads_like_a_sentence() {
         assert_eq!(Dimension::HEAT_FLUX.to_string(), "heat flux (W/m2)");
-        assert_eq!(
-            Dimension::RATIO.to_string(),
-            "ratio (a bare number, % or ppm)"
-        );
+        assert_eq!(Dimension::RATIO.to_string(), "ratio (a bare number, % or ppm)");
         assert_eq!(Dimension::MASS.to_power(2.0).to_string(), "quantity in kg2");
     }
 }

@@ -10,52 +10,29 @@ const FACTORS_FORGOTTEN: usize = 2;
 
 /// What is wrong with a quantity, and where: `bytes` counts inside the text that was read.
 #[derive(Debug, Clone, PartialEq, thiserror::Error)]
-#[expect(
-    missing_docs,
-    reason = "the fields are what the message says about them"
-)]
+#[expect(missing_docs, reason = "the fields are what the message says about them")]
 pub enum UnitError {
     /// Far longer than any value.
     #[error("this text of {length} bytes is too long for a value with its unit")]
     TooLong { length: usize, bytes: Range<usize> },
     /// Nothing but blanks.
     #[error("a value is missing: {} is wanted", phrase(*wanted))]
-    Empty {
-        wanted: Dimension,
-        bytes: Range<usize>,
-    },
+    Empty { wanted: Dimension, bytes: Range<usize> },
     /// A unit or a word without a number before it.
     #[error("`{text}` does not begin with a number")]
-    NumberMissing {
-        text: String,
-        wanted: Dimension,
-        bytes: Range<usize>,
-    },
+    NumberMissing { text: String, wanted: Dimension, bytes: Range<usize> },
     /// Digits and signs that make no number.
     #[error("`{text}` is not a number")]
     MalformedNumber { text: String, bytes: Range<usize> },
     /// `1,5`; three digits after the comma may also have meant thousands.
     #[error("`{text}` has a comma in the number")]
-    DecimalComma {
-        text: String,
-        pointed: String,
-        joined: Option<String>,
-        bytes: Range<usize>,
-    },
+    DecimalComma { text: String, pointed: String, joined: Option<String>, bytes: Range<usize> },
     /// `1_000`, `1 000`, `1,000,000`.
     #[error("`{text}` has its digits in groups")]
-    ThousandsSeparator {
-        text: String,
-        joined: String,
-        bytes: Range<usize>,
-    },
+    ThousandsSeparator { text: String, joined: String, bytes: Range<usize> },
     /// Hexadecimal, octal or binary.
     #[error("`{text}` is not a decimal number")]
-    NotDecimal {
-        text: String,
-        decimal: Option<String>,
-        bytes: Range<usize>,
-    },
+    NotDecimal { text: String, decimal: Option<String>, bytes: Range<usize> },
     /// `nan`, `inf`.
     #[error("`{text}` is not a finite number")]
     NotFinite { text: String, bytes: Range<usize> },
@@ -70,50 +47,25 @@ pub enum UnitError {
     ForeignCharacter { found: char, bytes: Range<usize> },
     /// `5kg`.
     #[error("`{text}` has no blank between the number and its unit")]
-    NoBlank {
-        text: String,
-        spaced: String,
-        bytes: Range<usize>,
-    },
+    NoBlank { text: String, spaced: String, bytes: Range<usize> },
     /// `5/s`.
     #[error("`{text}` has nothing above the slash")]
-    NothingAboveSlash {
-        text: String,
-        instead: String,
-        bytes: Range<usize>,
-    },
+    NothingAboveSlash { text: String, instead: String, bytes: Range<usize> },
     /// Two numbers in a row.
     #[error("`{text}` has a number where the unit is wanted")]
     SecondNumber { text: String, bytes: Range<usize> },
     /// A bare number where a unit is due.
     #[error("`{number}` has no unit: {} is wanted", phrase(*wanted))]
-    UnitMissing {
-        number: String,
-        wanted: Dimension,
-        bytes: Range<usize>,
-    },
+    UnitMissing { number: String, wanted: Dimension, bytes: Range<usize> },
     /// No unit of that name.
     #[error("there is no unit `{symbol}`")]
-    UnknownUnit {
-        symbol: String,
-        corrected: Option<String>,
-        bytes: Range<usize>,
-    },
+    UnknownUnit { symbol: String, corrected: Option<String>, bytes: Range<usize> },
     /// A word for several units.
     #[error("`{symbol}` stands for more than one unit")]
-    AmbiguousUnit {
-        symbol: String,
-        choices: &'static [&'static str],
-        bytes: Range<usize>,
-    },
+    AmbiguousUnit { symbol: String, choices: &'static [&'static str], bytes: Range<usize> },
     /// `W/m2 K`, with both readings.
     #[error("`{unit}` can be read in two ways")]
-    AmbiguousQuotient {
-        unit: String,
-        below: String,
-        above: String,
-        bytes: Range<usize>,
-    },
+    AmbiguousQuotient { unit: String, below: String, above: String, bytes: Range<usize> },
     /// `m^`, `m99`, `m^(2)`.
     #[error("`{text}` has no exponent that can be used")]
     BadExponent { text: String, bytes: Range<usize> },
@@ -140,34 +92,16 @@ pub enum UnitError {
     StandsAlone { symbol: String, bytes: Range<usize> },
     /// A quantity of another kind.
     #[error("`{text}` is {}, but {} is wanted", phrase(*found), phrase(*wanted))]
-    WrongDimension {
-        text: String,
-        found: Dimension,
-        wanted: Dimension,
-        bytes: Range<usize>,
-    },
+    WrongDimension { text: String, found: Dimension, wanted: Dimension, bytes: Range<usize> },
     /// `10 degC` for a difference.
     #[error("`{text}` is a temperature, but a difference of temperatures is wanted")]
-    TemperatureForDifference {
-        text: String,
-        number: String,
-        symbol: String,
-        bytes: Range<usize>,
-    },
+    TemperatureForDifference { text: String, number: String, symbol: String, bytes: Range<usize> },
     /// `10 delta_degC` for a temperature.
     #[error("`{text}` is a difference of temperatures, but a temperature is wanted")]
-    DifferenceForTemperature {
-        text: String,
-        number: String,
-        bytes: Range<usize>,
-    },
+    DifferenceForTemperature { text: String, number: String, bytes: Range<usize> },
     /// `2 barg` where no level is wanted.
     #[error("`{text}` counts from the pressure of the atmosphere, but a difference is wanted")]
-    GaugeForPressure {
-        text: String,
-        instead: String,
-        bytes: Range<usize>,
-    },
+    GaugeForPressure { text: String, instead: String, bytes: Range<usize> },
     /// Colder than cold.
     #[error("`{text}` is below absolute zero")]
     BelowAbsoluteZero { text: String, bytes: Range<usize> },
@@ -225,60 +159,32 @@ impl UnitError {
                 format!("write it like `{}`", example(*wanted))
             }
             Self::MalformedNumber { .. } => "write it like `40`, `0.5` or `1.2e-3`".into(),
-            Self::DecimalComma {
-                pointed,
-                joined: None,
-                ..
-            } => format!("write `{pointed}`"),
-            Self::DecimalComma {
-                pointed,
-                joined: Some(joined),
-                ..
-            } => {
+            Self::DecimalComma { pointed, joined: None, .. } => format!("write `{pointed}`"),
+            Self::DecimalComma { pointed, joined: Some(joined), .. } => {
                 format!("write `{pointed}` for a decimal comma, `{joined}` for thousands")
             }
             Self::ThousandsSeparator { joined, .. } => format!("write `{joined}`"),
-            Self::NotDecimal {
-                decimal: Some(decimal),
-                ..
-            } => format!("write `{decimal}`"),
+            Self::NotDecimal { decimal: Some(decimal), .. } => format!("write `{decimal}`"),
             Self::NotDecimal { decimal: None, .. } => "write it with the digits 0 to 9".into(),
-            Self::NotFinite { .. } => {
-                "write a number; what has no value or no limit is left out".into()
-            }
-            Self::TooLarge { .. } | Self::TooSmall { .. } => {
-                "check the exponent and the prefix of the unit".into()
-            }
-            Self::ForeignCharacter { .. } => {
-                "write it with the digits 0 to 9, `.` and `-`, as in `-1.2e-3`".into()
-            }
+            Self::NotFinite { .. } => "write a number; what has no value or no limit is left out".into(),
+            Self::TooLarge { .. } | Self::TooSmall { .. } => "check the exponent and the prefix of the unit".into(),
+            Self::ForeignCharacter { .. } => "write it with the digits 0 to 9, `.` and `-`, as in `-1.2e-3`".into(),
             Self::NoBlank { spaced, .. } | Self::NotSeparated { spaced, .. } => {
                 format!("write `{spaced}`")
             }
             Self::NothingAboveSlash { instead, .. } => format!("write `{instead}`"),
-            Self::SecondNumber { .. } => {
-                "a value is one number and a unit, such as `85 degC` or `2e-4 1/s`".into()
-            }
+            Self::SecondNumber { .. } => "a value is one number and a unit, such as `85 degC` or `2e-4 1/s`".into(),
             Self::UnitMissing { number, wanted, .. } => unit_missing(number, *wanted),
-            Self::UnknownUnit {
-                corrected: Some(corrected),
-                ..
-            } => {
+            Self::UnknownUnit { corrected: Some(corrected), .. } => {
                 format!("do you mean `{corrected}`?")
             }
-            Self::UnknownUnit {
-                corrected: None, ..
-            } => "`axirad list units` shows all that are known".into(),
+            Self::UnknownUnit { corrected: None, .. } => "`axirad list units` shows all that are known".into(),
             Self::AmbiguousUnit { choices, .. } => format!("write {}", choices.join(", ")),
             Self::AmbiguousQuotient { below, above, .. } => {
                 format!("write `{below}` or `{above}`")
             }
-            Self::BadExponent { .. } => {
-                "an exponent follows its unit: `m2`, `s-1`, `m1.5`; the largest is 20".into()
-            }
-            Self::UnitExpected { .. } => {
-                "write units like `W/(m2 K)`, `Pa.s`, `1/s` or `m3/(mol s)`".into()
-            }
+            Self::BadExponent { .. } => "an exponent follows its unit: `m2`, `s-1`, `m1.5`; the largest is 20".into(),
+            Self::UnitExpected { .. } => "write units like `W/(m2 K)`, `Pa.s`, `1/s` or `m3/(mol s)`".into(),
             Self::ParenthesisNotClosed { closed, .. } => format!("write `{closed}`"),
             Self::ParenthesisNotOpened { .. } => "write units like `W/(m2 K)`".into(),
             Self::TooDeep { .. } => "two levels are enough for any unit".into(),
@@ -291,18 +197,12 @@ impl UnitError {
                 let fahrenheit = symbol.ends_with('F') || symbol.ends_with('℉');
                 let scale = if fahrenheit { "F" } else { "C" };
                 let kelvin = if fahrenheit { "" } else { "K or " };
-                format!(
-                    "a difference is {kelvin}delta_deg{scale}: write `{number} delta_deg{scale}`"
-                )
+                format!("a difference is {kelvin}delta_deg{scale}: write `{number} delta_deg{scale}`")
             }
             Self::DifferenceForTemperature { number, .. } => {
                 let degrees = format!("{number} degC");
                 let allowed = read(&degrees, Dimension::TEMPERATURE).is_ok();
-                let like = if allowed {
-                    degrees
-                } else {
-                    example(Dimension::TEMPERATURE)
-                };
+                let like = if allowed { degrees } else { example(Dimension::TEMPERATURE) };
                 format!("write degC, degF, degR or K, such as `{like}`")
             }
             Self::GaugeForPressure { instead, .. } => format!("write a difference: `{instead}`"),
@@ -348,28 +248,13 @@ fn missing_factor(found: Dimension, wanted: Dimension) -> Option<String> {
         return None;
     }
     let quotient = wanted.over(found);
-    let factors = quotient
-        .exponents()
-        .into_iter()
-        .filter(|&exponent| !vanishes(exponent))
-        .count();
-    (1..=FACTORS_FORGOTTEN)
-        .contains(&factors)
-        .then(|| symbol(quotient))
+    let factors = quotient.exponents().into_iter().filter(|&exponent| !vanishes(exponent)).count();
+    (1..=FACTORS_FORGOTTEN).contains(&factors).then(|| symbol(quotient))
 }
 
 /// The text as it may stand in a message of one line, whatever was typed.
 pub(super) fn quoted(text: &str) -> String {
-    text.trim()
-        .chars()
-        .map(|c| {
-            if c.is_control() {
-                char::REPLACEMENT_CHARACTER
-            } else {
-                c
-            }
-        })
-        .collect()
+    text.trim().chars().map(|c| if c.is_control() { char::REPLACEMENT_CHARACTER } else { c }).collect()
 }
 
 #[cfg(test)]
@@ -426,10 +311,7 @@ mod tests {
     fn every_mistake_is_told_in_the_words_of_its_writer() {
         for &(text, wanted, message, help) in SAID {
             let error = read(text, wanted).expect_err(text);
-            assert_eq!(
-                (error.to_string().as_str(), error.help().as_str()),
-                (message, help)
-            );
+            assert_eq!((error.to_string().as_str(), error.help().as_str()), (message, help));
             let bytes = error.bytes();
             assert!(text.get(bytes.clone()).is_some(), "{text}: {bytes:?}");
         }
@@ -438,13 +320,7 @@ mod tests {
     #[test]
     fn a_long_text_is_refused_with_its_length() {
         let error = read(&"9".repeat(400), Dimension::RATIO).expect_err("400 digits");
-        assert_eq!(
-            error,
-            UnitError::TooLong {
-                length: 400,
-                bytes: 0..400
-            }
-        );
+        assert_eq!(error, UnitError::TooLong { length: 400, bytes: 0..400 });
         assert!(!error.help().is_empty());
     }
 

@@ -29,10 +29,7 @@ pub(super) fn exponent_text(text: &str) -> (usize, String) {
 
 fn superscript(c: char) -> Option<char> {
     let digits = ['⁰', '¹', '²', '³', '⁴', '⁵', '⁶', '⁷', '⁸', '⁹'];
-    ('0'..='9')
-        .zip(digits)
-        .find(|&(_, raised)| raised == c)
-        .map(|(digit, _)| digit)
+    ('0'..='9').zip(digits).find(|&(_, raised)| raised == c).map(|(digit, _)| digit)
 }
 
 #[cfg(test)]
@@ -45,11 +42,7 @@ mod tests {
     #[test]
     fn exponents_may_be_decimal_and_negative() {
         let wanted = Dimension::rate_constant(1.5);
-        for text in [
-            "2 m1.5/(mol0.5 s)",
-            "2 m^1.5 mol^-0.5 s^-1",
-            "2 m1.5.mol-0.5.s-1",
-        ] {
+        for text in ["2 m1.5/(mol0.5 s)", "2 m^1.5 mol^-0.5 s^-1", "2 m1.5.mol-0.5.s-1"] {
             assert_eq!(read(text, wanted), Ok(2.0), "{text}");
         }
         let litres = read("2 L0.5/(mol0.5 s)", wanted).expect("a rate constant of order 1.5");
@@ -62,9 +55,7 @@ mod tests {
             let error = parse(text, 0).expect_err(text);
             let bad = matches!(
                 error,
-                UnitError::BadExponent { .. }
-                    | UnitError::UnitExpected { .. }
-                    | UnitError::UnknownUnit { .. }
+                UnitError::BadExponent { .. } | UnitError::UnitExpected { .. } | UnitError::UnknownUnit { .. }
             );
             assert!(bad, "{text}: {error:?}");
         }

@@ -33,25 +33,14 @@ pub(super) struct Expression {
 /// Everything that is no unit; bytes count in the whole text.
 pub(super) fn parse(text: &str, start: usize) -> Result<Expression, UnitError> {
     let end = text.trim_end().len();
-    let mut parser = Parser {
-        text: &text[..end],
-        start,
-        at: start,
-        single: None,
-        factors: 0,
-        has_point: false,
-    };
+    let mut parser = Parser { text: &text[..end], start, at: start, single: None, factors: 0, has_point: false };
     let size = parser.quotient(0)?;
     if let Some(found) = parser.next() {
         return Err(parser.left_over(found));
     }
     let alone = parser.alone();
     let whole = size.decade.round();
-    let rest = if (size.decade - whole).abs() < WHOLE {
-        0.0
-    } else {
-        size.decade - whole
-    };
+    let rest = if (size.decade - whole).abs() < WHOLE { 0.0 } else { size.decade - whole };
     Ok(Expression {
         dimension: size.dimension,
         numerator: size.numerator * 10_f64.powf(rest),
@@ -62,10 +51,7 @@ pub(super) fn parse(text: &str, start: usize) -> Result<Expression, UnitError> {
     })
 }
 
-#[expect(
-    clippy::cast_possible_truncation,
-    reason = "a text of 200 bytes cannot leave the range"
-)]
+#[expect(clippy::cast_possible_truncation, reason = "a text of 200 bytes cannot leave the range")]
 fn nearest_integer(whole: f64) -> i32 {
     whole as i32
 }
@@ -111,11 +97,7 @@ impl<'a> Parser<'a> {
     fn quotient(&mut self, depth: usize) -> Result<Size, UnitError> {
         self.skip_blanks();
         let start = self.at;
-        let mut size = if self.is_one() {
-            self.one()
-        } else {
-            self.product(depth)?
-        };
+        let mut size = if self.is_one() { self.one() } else { self.product(depth)? };
         let first_slash = self.at;
         loop {
             let slash = self.at;
@@ -136,9 +118,7 @@ impl<'a> Parser<'a> {
 
     /// The 1 of `1/s`.
     fn is_one(&self) -> bool {
-        self.rest()
-            .strip_prefix('1')
-            .is_some_and(|rest| rest.trim_start().starts_with('/'))
+        self.rest().strip_prefix('1').is_some_and(|rest| rest.trim_start().starts_with('/'))
     }
 
     fn one(&mut self) -> Size {
@@ -163,11 +143,7 @@ impl<'a> Parser<'a> {
             return true;
         }
         let rest = self.rest().trim_start();
-        let begins = rest.len() < self.rest().len()
-            && rest
-                .chars()
-                .next()
-                .is_some_and(|c| in_symbol(c) || c == '(');
+        let begins = rest.len() < self.rest().len() && rest.chars().next().is_some_and(|c| in_symbol(c) || c == '(');
         if begins {
             self.skip_blanks();
         }
@@ -201,10 +177,7 @@ impl<'a> Parser<'a> {
     fn parenthesis(&mut self, depth: usize) -> Result<Size, UnitError> {
         let open = self.at;
         if depth == DEEPEST {
-            return Err(UnitError::TooDeep {
-                deepest: DEEPEST,
-                bytes: open..self.text.len(),
-            });
+            return Err(UnitError::TooDeep { deepest: DEEPEST, bytes: open..self.text.len() });
         }
         self.at += 1;
         let size = self.quotient(depth + 1)?;
@@ -215,10 +188,7 @@ impl<'a> Parser<'a> {
             }
             None => {
                 let closed = format!("{})", quoted(&self.text[self.start..]));
-                Err(UnitError::ParenthesisNotClosed {
-                    closed,
-                    bytes: open..open + 1,
-                })
+                Err(UnitError::ParenthesisNotClosed { closed, bytes: open..open + 1 })
             }
             Some(found) => Err(self.left_over(found)),
         }
@@ -226,10 +196,7 @@ impl<'a> Parser<'a> {
 
     fn symbol(&mut self) -> Result<Size, UnitError> {
         let from = self.at;
-        let length = self
-            .rest()
-            .find(|c| !in_symbol(c))
-            .unwrap_or(self.rest().len());
+        let length = self.rest().find(|c| !in_symbol(c)).unwrap_or(self.rest().len());
         self.at += length;
         let bytes = from..self.at;
         let symbol = &self.text[bytes.clone()];
@@ -253,21 +220,13 @@ impl<'a> Parser<'a> {
     }
 
     /// Units with an offset and parts of one have no meaning in a product.
-    fn alone_so_far(
-        &self,
-        symbol: &str,
-        exponent: f64,
-        bytes: &Range<usize>,
-    ) -> Result<(), UnitError> {
+    fn alone_so_far(&self, symbol: &str, exponent: f64, bytes: &Range<usize>) -> Result<(), UnitError> {
         let first = self.text[self.start..bytes.start].trim().is_empty();
         let last = self.rest().trim().is_empty();
         if first && last && is_one(exponent) {
             return Ok(());
         }
-        Err(UnitError::StandsAlone {
-            symbol: quoted(symbol),
-            bytes: bytes.clone(),
-        })
+        Err(UnitError::StandsAlone { symbol: quoted(symbol), bytes: bytes.clone() })
     }
 
     /// The exponent that follows a symbol directly; 1 where there is none.
@@ -281,10 +240,7 @@ impl<'a> Parser<'a> {
         self.at += usize::from(caret) + length;
         match plain.parse::<f64>() {
             Ok(exponent) if exponent.abs() <= LARGEST_EXPONENT => Ok(exponent),
-            _ => Err(UnitError::BadExponent {
-                text: quoted(&self.text[symbol..self.at]),
-                bytes: symbol..self.at,
-            }),
+            _ => Err(UnitError::BadExponent { text: quoted(&self.text[symbol..self.at]), bytes: symbol..self.at }),
         }
     }
 
@@ -311,9 +267,7 @@ mod tests {
 
     #[test]
     fn products_may_be_written_with_any_sign() {
-        for text in [
-            "2 Pa s", "2 Pa.s", "2 Pa·s", "2 Pa⋅s", "2 Pa*s", "2 Pa . s", "2 s Pa", "2 (Pa s)",
-        ] {
+        for text in ["2 Pa s", "2 Pa.s", "2 Pa·s", "2 Pa⋅s", "2 Pa*s", "2 Pa . s", "2 s Pa", "2 (Pa s)"] {
             assert_eq!(read(text, Dimension::VISCOSITY), Ok(2.0), "{text}");
         }
         assert_eq!(read("12 kPa.s", Dimension::VISCOSITY), Ok(12_000.0));
@@ -335,11 +289,7 @@ mod tests {
             "300 kg s-3 K^-1",
             "300 J/(s m2 delta_degC)",
         ] {
-            assert_eq!(
-                read(text, Dimension::HEAT_TRANSFER_COEFFICIENT),
-                Ok(300.0),
-                "{text}"
-            );
+            assert_eq!(read(text, Dimension::HEAT_TRANSFER_COEFFICIENT), Ok(300.0), "{text}");
         }
         assert_eq!(read("2 1/s", Dimension::FREQUENCY), Ok(2.0));
         assert_eq!(read("2 1 / h", Dimension::FREQUENCY), Ok(2.0 / 3600.0));

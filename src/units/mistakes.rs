@@ -21,11 +21,7 @@ impl Parser<'_> {
         let first = piece(above.clone());
         let middle = piece(above.end..slash);
         let last = piece(below);
-        let raised = if first == "1" {
-            more.clone()
-        } else {
-            format!("{first} {more}")
-        };
+        let raised = if first == "1" { more.clone() } else { format!("{first} {more}") };
         UnitError::AmbiguousQuotient {
             unit: quoted(&self.text[self.start..]),
             below: quoted(&format!("{head}{first}{middle}/({last} {more}){tail}")),
@@ -37,40 +33,24 @@ impl Parser<'_> {
     pub(super) fn unknown(&self, bytes: Range<usize>) -> UnitError {
         let symbol = &self.text[bytes.clone()];
         if let Some(choices) = choices(symbol) {
-            return UnitError::AmbiguousUnit {
-                symbol: quoted(symbol),
-                choices,
-                bytes,
-            };
+            return UnitError::AmbiguousUnit { symbol: quoted(symbol), choices, bytes };
         }
         let corrected = nearest(symbol).map(|unit| self.corrected(&bytes, &unit));
-        UnitError::UnknownUnit {
-            symbol: quoted(symbol),
-            corrected,
-            bytes,
-        }
+        UnitError::UnknownUnit { symbol: quoted(symbol), corrected, bytes }
     }
 
     /// The whole text with the better unit in place, in parentheses where it must stay together.
     fn corrected(&self, bytes: &Range<usize>, unit: &str) -> String {
         let (before, after) = (&self.text[..bytes.start], &self.text[bytes.end..]);
         // `deg C` was one symbol to its writer
-        let before = match before
-            .trim_end()
-            .strip_suffix("deg")
-            .or_else(|| before.trim_end().strip_suffix('°'))
-        {
+        let before = match before.trim_end().strip_suffix("deg").or_else(|| before.trim_end().strip_suffix('°')) {
             Some(degree) if unit.starts_with("deg") => degree,
             _ => before,
         };
         let raised = after.starts_with(|c: char| c.is_numeric() || matches!(c, '^' | '-' | '⁻'));
         let compound = unit.contains(['/', ' ']);
         let inside = compound && (raised || before.trim_end().ends_with('/'));
-        let unit = if inside {
-            format!("({unit})")
-        } else {
-            unit.to_owned()
-        };
+        let unit = if inside { format!("({unit})") } else { unit.to_owned() };
         quoted(&format!("{before}{unit}{after}"))
     }
 
@@ -78,10 +58,7 @@ impl Parser<'_> {
         let (before, after) = (&self.text[self.start..self.at], &self.text[self.at..]);
         let spaced = quoted(&format!("{before} {after}"));
         let length = after.chars().next().map_or(0, char::len_utf8);
-        UnitError::NotSeparated {
-            spaced,
-            bytes: self.at..self.at + length,
-        }
+        UnitError::NotSeparated { spaced, bytes: self.at..self.at + length }
     }
 
     pub(super) fn unit_expected(&self, found: Option<char>) -> UnitError {
@@ -90,10 +67,7 @@ impl Parser<'_> {
             Some(found) => format!("before `{}`", quoted(&found.to_string())),
         };
         let length = found.map_or(0, char::len_utf8);
-        UnitError::UnitExpected {
-            place,
-            bytes: self.at..self.at + length,
-        }
+        UnitError::UnitExpected { place, bytes: self.at..self.at + length }
     }
 
     pub(super) fn left_over(&self, found: char) -> UnitError {
@@ -101,10 +75,7 @@ impl Parser<'_> {
         match found {
             ')' => UnitError::ParenthesisNotOpened { bytes },
             '0'..='9' => self.not_separated(),
-            _ if found.is_control() => UnitError::UnexpectedCharacter {
-                found: char::REPLACEMENT_CHARACTER,
-                bytes,
-            },
+            _ if found.is_control() => UnitError::UnexpectedCharacter { found: char::REPLACEMENT_CHARACTER, bytes },
             _ => UnitError::UnexpectedCharacter { found, bytes },
         }
     }
@@ -128,19 +99,11 @@ mod tests {
             ("J/mol m s/kg", "J/(mol m s)/kg", "J m s/mol/kg"),
         ] {
             let error = read(&format!("1 {unit}"), Dimension::RATIO).expect_err(unit);
-            let UnitError::AmbiguousQuotient {
-                below: first,
-                above: second,
-                ..
-            } = &error
-            else {
+            let UnitError::AmbiguousQuotient { below: first, above: second, .. } = &error else {
                 panic!("{unit}: {error:?}");
             };
             assert_eq!((first.as_str(), second.as_str()), (below, above));
-            assert!(
-                parse(first, 0).is_ok() && parse(second, 0).is_ok(),
-                "{unit}"
-            );
+            assert!(parse(first, 0).is_ok() && parse(second, 0).is_ok(), "{unit}");
         }
     }
 

@@ -20,13 +20,7 @@ const fn known(
     number: &'static str,
     usual: &'static [&'static str],
 ) -> Known {
-    Known {
-        dimension,
-        words,
-        symbol,
-        number,
-        usual,
-    }
+    Known { dimension, words, symbol, number, usual }
 }
 
 /// Where two names share a dimension (stress and pressure), the first one speaks for both.
@@ -107,11 +101,7 @@ pub(super) fn words(dimension: Dimension) -> Option<&'static str> {
 /// Name and unit with the article, for messages.
 pub(super) fn phrase(dimension: Dimension) -> String {
     let text = dimension.to_string();
-    let article = if text.starts_with(['a', 'e', 'i', 'o', 'u']) {
-        "an"
-    } else {
-        "a"
-    };
+    let article = if text.starts_with(['a', 'e', 'i', 'o', 'u']) { "an" } else { "a" };
     format!("{article} {text}")
 }
 
@@ -177,10 +167,7 @@ fn composed(dimension: Dimension) -> String {
 
 /// How much there is to read: the symbols, and the size of their exponents.
 fn cost(dimension: Dimension) -> f64 {
-    let present = dimension
-        .exponents()
-        .into_iter()
-        .filter(|&exponent| !vanishes(exponent));
+    let present = dimension.exponents().into_iter().filter(|&exponent| !vanishes(exponent));
     present.map(|exponent| 1.0 + exponent.abs()).sum()
 }
 
@@ -193,11 +180,7 @@ fn quotient(rest: Dimension, above: Option<&str>, below: Option<&str>) -> String
         if vanishes(exponent) {
             continue;
         }
-        let side = if exponent > 0.0 {
-            &mut numerator
-        } else {
-            &mut denominator
-        };
+        let side = if exponent > 0.0 { &mut numerator } else { &mut denominator };
         side.push(raised(symbol, exponent.abs()));
     }
     let numerator = numerator.join(" ");
@@ -214,11 +197,7 @@ fn quotient(rest: Dimension, above: Option<&str>, below: Option<&str>) -> String
 fn raised(symbol: &str, exponent: f64) -> String {
     let digits = format!("{exponent:.3}");
     let digits = digits.trim_end_matches('0').trim_end_matches('.');
-    if digits == "1" {
-        symbol.to_owned()
-    } else {
-        format!("{symbol}{digits}")
-    }
+    if digits == "1" { symbol.to_owned() } else { format!("{symbol}{digits}") }
 }
 
 /// Every dimension that has a name, for tests.
@@ -236,12 +215,7 @@ mod tests {
     fn each_symbol_reads_as_its_own_dimension() {
         for known in KNOWN {
             let text = format!("1 {}", known.symbol);
-            assert_eq!(
-                read(text.trim(), known.dimension),
-                Ok(1.0),
-                "{}",
-                known.words
-            );
+            assert_eq!(read(text.trim(), known.dimension), Ok(1.0), "{}", known.words);
         }
     }
 

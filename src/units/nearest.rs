@@ -60,22 +60,8 @@ const WORDS: &[(&str, &[&str])] = &[
 
 /// Words for several units, and how each of them is written.
 const AMBIGUOUS: &[(&str, &[&str])] = &[
-    (
-        "ton",
-        &[
-            "`t` (1000 kg)",
-            "`ton_short` (2000 lb)",
-            "`ton_long` (2240 lb)",
-        ],
-    ),
-    (
-        "tons",
-        &[
-            "`t` (1000 kg)",
-            "`ton_short` (2000 lb)",
-            "`ton_long` (2240 lb)",
-        ],
-    ),
+    ("ton", &["`t` (1000 kg)", "`ton_short` (2000 lb)", "`ton_long` (2240 lb)"]),
+    ("tons", &["`t` (1000 kg)", "`ton_short` (2000 lb)", "`ton_long` (2240 lb)"]),
 ];
 
 /// Prefixes that a slip of the pen may have meant; the others would only widen the guess.
@@ -86,10 +72,7 @@ const LONGEST: usize = 24;
 
 /// The units a word may stand for, where that is more than one.
 pub(super) fn choices(symbol: &str) -> Option<&'static [&'static str]> {
-    AMBIGUOUS
-        .iter()
-        .find(|(word, _)| symbol.eq_ignore_ascii_case(word))
-        .map(|&(_, ways)| ways)
+    AMBIGUOUS.iter().find(|(word, _)| symbol.eq_ignore_ascii_case(word)).map(|&(_, ways)| ways)
 }
 
 /// The unit that was most likely meant.
@@ -97,10 +80,7 @@ pub(super) fn nearest(symbol: &str) -> Option<String> {
     if symbol.len() > LONGEST {
         return None;
     }
-    word(symbol)
-        .or_else(|| run_together(symbol))
-        .or_else(|| other_case(symbol))
-        .or_else(|| close(symbol))
+    word(symbol).or_else(|| run_together(symbol)).or_else(|| other_case(symbol)).or_else(|| close(symbol))
 }
 
 fn word(symbol: &str) -> Option<String> {
@@ -111,23 +91,13 @@ fn word(symbol: &str) -> Option<String> {
     let lower = symbol.to_lowercase();
     // Δ has a lower case of its own
     let lower = lower.replace('δ', "Δ");
-    WORDS
-        .iter()
-        .find(|(_, words)| words.contains(&lower.as_str()))
-        .map(|&(unit, _)| unit.to_owned())
+    WORDS.iter().find(|(_, words)| words.contains(&lower.as_str())).map(|&(unit, _)| unit.to_owned())
 }
 
 /// The symbol with the fewest letters in another case.
 fn other_case(symbol: &str) -> Option<String> {
-    let changes = |way: &String| {
-        way.chars()
-            .zip(symbol.chars())
-            .filter(|(a, b)| a != b)
-            .count()
-    };
-    candidates()
-        .filter(|way| way.eq_ignore_ascii_case(symbol))
-        .min_by_key(changes)
+    let changes = |way: &String| way.chars().zip(symbol.chars()).filter(|(a, b)| a != b).count();
+    candidates().filter(|way| way.eq_ignore_ascii_case(symbol)).min_by_key(changes)
 }
 
 /// `Nm`, `mPas`: two units without a sign between them.
@@ -161,9 +131,7 @@ fn candidates() -> impl Iterator<Item = String> {
     let bare = all().map(|unit| unit.symbol.to_owned());
     let prefixed = LIKELY.iter().flat_map(|prefix| {
         all()
-            .filter(|unit| {
-                unit.prefixes.contains(prefix) && !(*prefix == "M" && unit.symbol == "m")
-            })
+            .filter(|unit| unit.prefixes.contains(prefix) && !(*prefix == "M" && unit.symbol == "m"))
             .map(move |unit| format!("{prefix}{}", unit.symbol))
     });
     bare.chain(prefixed)

@@ -19,9 +19,7 @@ impl Number<'_> {
     /// The number times a power of ten, rounded once.
     pub(super) fn value(&self, decade: i32) -> f64 {
         let exponent = self.exponent.saturating_add(decade);
-        format!("{}e{exponent}", self.mantissa)
-            .parse()
-            .expect("digits with a point and an exponent are a number")
+        format!("{}e{exponent}", self.mantissa).parse().expect("digits with a point and an exponent are a number")
     }
 
     /// Whether it is zero as typed, however small its exponent.
@@ -38,10 +36,7 @@ pub(super) fn scan(text: &str, wanted: Dimension) -> Result<Number<'_>, UnitErro
     let body = text.trim();
     let start = text.len() - text.trim_start().len();
     if body.is_empty() {
-        return Err(UnitError::Empty {
-            wanted,
-            bytes: 0..text.len(),
-        });
+        return Err(UnitError::Empty { wanted, bytes: 0..text.len() });
     }
     let sign = usize::from(body.starts_with(['+', '-']));
     let whole = digits(body, sign);
@@ -54,20 +49,13 @@ pub(super) fn scan(text: &str, wanted: Dimension) -> Result<Number<'_>, UnitErro
     }
     let (end, exponent) = exponent(body, mantissa);
     refuse_what_sticks(body, start, end)?;
-    Ok(Number {
-        text: &body[..end],
-        bytes: start..start + end,
-        mantissa: &body[..mantissa],
-        exponent,
-    })
+    Ok(Number { text: &body[..end], bytes: start..start + end, mantissa: &body[..mantissa], exponent })
 }
 
 /// Where the digits that begin at `from` end.
 fn digits(text: &str, from: usize) -> usize {
     let rest = text.get(from..).unwrap_or_default();
-    from + rest
-        .find(|c: char| !c.is_ascii_digit())
-        .unwrap_or(rest.len())
+    from + rest.find(|c: char| !c.is_ascii_digit()).unwrap_or(rest.len())
 }
 
 /// Where the exponent ends and what it is; none where no digit follows the `e`.
@@ -83,14 +71,7 @@ fn exponent(text: &str, from: usize) -> (usize, i32) {
         return (from, 0);
     }
     let size = text[first..end].parse().unwrap_or(i32::MAX);
-    (
-        end,
-        if rest[1..].starts_with('-') {
-            -size
-        } else {
-            size
-        },
-    )
+    (end, if rest[1..].starts_with('-') { -size } else { size })
 }
 
 /// Names the mistake in a text that begins with no digit.
@@ -100,31 +81,18 @@ fn not_a_number(body: &str, start: usize, wanted: Dimension) -> UnitError {
     let bare = word.trim_start_matches(['+', '-']);
     let lower = bare.trim_start_matches('.').to_ascii_lowercase();
     if matches!(lower.as_str(), "nan" | "inf" | "infinity" | "∞") {
-        return UnitError::NotFinite {
-            text: quoted(word),
-            bytes,
-        };
+        return UnitError::NotFinite { text: quoted(word), bytes };
     }
     // ½, ٣, the minus sign and the dashes that stand for it
     let foreign = |c: char| c.is_numeric() || matches!(c, '−' | '–' | '—' | '＋' | '－');
     if let Some(found) = bare.chars().next().filter(|&c| foreign(c) && !c.is_ascii()) {
         let at = start + word.len() - bare.len();
-        return UnitError::ForeignCharacter {
-            found,
-            bytes: at..at + found.len_utf8(),
-        };
+        return UnitError::ForeignCharacter { found, bytes: at..at + found.len_utf8() };
     }
     if word.starts_with(['+', '-', '.']) {
-        return UnitError::MalformedNumber {
-            text: quoted(word),
-            bytes,
-        };
+        return UnitError::MalformedNumber { text: quoted(word), bytes };
     }
-    UnitError::NumberMissing {
-        text: quoted(body),
-        wanted,
-        bytes,
-    }
+    UnitError::NumberMissing { text: quoted(body), wanted, bytes }
 }
 
 /// A number ends at a blank or at the end; a unit that touches it is told later, when it is known
@@ -141,26 +109,16 @@ fn refuse_what_sticks(body: &str, start: usize, end: usize) -> Result<(), UnitEr
     }
     if next.is_numeric() {
         let at = start + end;
-        return Err(UnitError::ForeignCharacter {
-            found: next,
-            bytes: at..at + next.len_utf8(),
-        });
+        return Err(UnitError::ForeignCharacter { found: next, bytes: at..at + next.len_utf8() });
     }
-    let malformed = UnitError::MalformedNumber {
-        text: quoted(word),
-        bytes: bytes.clone(),
-    };
+    let malformed = UnitError::MalformedNumber { text: quoted(word), bytes: bytes.clone() };
     let second = rest.chars().nth(1);
     match next {
         'x' | 'X' | 'b' | 'B' | 'o' | 'O'
             if body[..end].ends_with('0') && second.is_some_and(|c| c.is_ascii_hexdigit()) =>
         {
             let decimal = other_base(word);
-            Err(UnitError::NotDecimal {
-                text: quoted(word),
-                decimal,
-                bytes,
-            })
+            Err(UnitError::NotDecimal { text: quoted(word), decimal, bytes })
         }
         ',' | '_' | '\'' | '’' => Err(separated(body, start).unwrap_or(malformed)),
         '.' => match separated(body, start) {
@@ -168,9 +126,7 @@ fn refuse_what_sticks(body: &str, start: usize, end: usize) -> Result<(), UnitEr
             _ => Err(malformed),
         },
         'e' | 'E' if matches!(second, None | Some(' ' | '+' | '-')) => Err(malformed),
-        'd' | 'D' if second.is_some_and(|c| c.is_ascii_digit() || c == '-' || c == '+') => {
-            Err(malformed)
-        }
+        'd' | 'D' if second.is_some_and(|c| c.is_ascii_digit() || c == '-' || c == '+') => Err(malformed),
         '*' | '×' | '^' | '+' | '-' | '·' => Err(malformed),
         '/' if second.is_some_and(|c| c.is_ascii_digit()) => Err(malformed),
         _ => Ok(()),
@@ -189,18 +145,11 @@ fn in_groups(body: &str, start: usize, end: usize) -> Result<(), UnitError> {
     let until = body.len() - next.len() + group;
     let text = quoted(&body[..until]);
     let bytes = start..start + until;
-    let whole = body[..end]
-        .trim_start_matches(['+', '-'])
-        .chars()
-        .all(|c| c.is_ascii_digit());
+    let whole = body[..end].trim_start_matches(['+', '-']).chars().all(|c| c.is_ascii_digit());
     let ends = after.is_none_or(|c| c.is_whitespace() || c == '.');
     if whole && group == 3 && ends {
         let joined = format!("{}{}", &body[..end], &next[..group]);
-        return Err(UnitError::ThousandsSeparator {
-            text,
-            joined,
-            bytes,
-        });
+        return Err(UnitError::ThousandsSeparator { text, joined, bytes });
     }
     Err(UnitError::SecondNumber { text, bytes })
 }
@@ -209,41 +158,25 @@ fn in_groups(body: &str, start: usize, end: usize) -> Result<(), UnitError> {
 fn separated(body: &str, start: usize) -> Option<UnitError> {
     let in_number = |c: char| c.is_ascii_digit() || matches!(c, '.' | ',' | '_' | '\'' | '’');
     let sign = usize::from(body.starts_with(['+', '-']));
-    let end = body[sign..]
-        .find(|c| !in_number(c))
-        .map_or(body.len(), |at| sign + at);
+    let end = body[sign..].find(|c| !in_number(c)).map_or(body.len(), |at| sign + at);
     let word = body[..end].trim_end_matches([',', '.']);
     let bytes = start..start + word.len();
     let text = quoted(word);
-    let plain: String = word
-        .chars()
-        .filter(|c| !matches!(c, '_' | '\'' | '’'))
-        .collect();
+    let plain: String = word.chars().filter(|c| !matches!(c, '_' | '\'' | '’')).collect();
     let commas = plain.matches(',').count();
     let without = plain.replace(',', "");
     if commas == 1 && plain.len() == word.len() && !plain.contains('.') {
         let pointed = plain.replace(',', ".");
         let three = plain.find(',').is_some_and(|at| plain.len() - at == 4);
         let joined = three.then_some(without);
-        return Some(UnitError::DecimalComma {
-            text,
-            pointed,
-            joined,
-            bytes,
-        });
+        return Some(UnitError::DecimalComma { text, pointed, joined, bytes });
     }
     // 1.234,5: the comma is the point
     let joined = match (plain.find('.'), plain.find(',')) {
-        (Some(point), Some(comma)) if point < comma && commas == 1 => {
-            plain.replace('.', "").replace(',', ".")
-        }
+        (Some(point), Some(comma)) if point < comma && commas == 1 => plain.replace('.', "").replace(',', "."),
         _ => without,
     };
-    (joined != word && joined.parse::<f64>().is_ok()).then_some(UnitError::ThousandsSeparator {
-        text,
-        joined,
-        bytes,
-    })
+    (joined != word && joined.parse::<f64>().is_ok()).then_some(UnitError::ThousandsSeparator { text, joined, bytes })
 }
 
 /// What a number of another base is in decimal digits.
@@ -315,12 +248,9 @@ mod tests {
 
     #[test]
     fn other_scripts_are_pointed_at() {
-        for (text, found, bytes) in [
-            ("５ m", '５', 0..3),
-            ("−5 m", '−', 0..3),
-            ("5½ in", '½', 1..3),
-            ("-٣ m", '٣', 1..3),
-        ] {
+        for (text, found, bytes) in
+            [("５ m", '５', 0..3), ("−5 m", '−', 0..3), ("5½ in", '½', 1..3), ("-٣ m", '٣', 1..3)]
+        {
             let error = UnitError::ForeignCharacter { found, bytes };
             assert_eq!(read(text, Dimension::LENGTH), Err(error));
         }
@@ -328,37 +258,15 @@ mod tests {
 
     #[test]
     fn other_bases_and_no_numbers_have_their_own_messages() {
-        let not_decimal = |text| {
-            matches!(
-                read(text, Dimension::RATIO),
-                Err(UnitError::NotDecimal { .. })
-            )
-        };
+        let not_decimal = |text| matches!(read(text, Dimension::RATIO), Err(UnitError::NotDecimal { .. }));
         assert!(not_decimal("0x1f") && not_decimal("0b101") && not_decimal("0o17"));
-        for text in [
-            "nan",
-            ".nan",
-            "NaN",
-            "inf",
-            "-inf",
-            "+Infinity",
-            ".inf",
-            "-.INF",
-        ] {
+        for text in ["nan", ".nan", "NaN", "inf", "-inf", "+Infinity", ".inf", "-.INF"] {
             let read = read(text, Dimension::RATIO);
-            assert!(
-                matches!(read, Err(UnitError::NotFinite { .. })),
-                "{text}: {read:?}"
-            );
+            assert!(matches!(read, Err(UnitError::NotFinite { .. })), "{text}: {read:?}");
         }
-        for text in [
-            "1e", "1e+", "1.2.3", "--4", "5..", "1e5.2", "1/2", "10-20", "1d5", "3*10^4", ".",
-        ] {
+        for text in ["1e", "1e+", "1.2.3", "--4", "5..", "1e5.2", "1/2", "10-20", "1d5", "3*10^4", "."] {
             let read = read(text, Dimension::RATIO);
-            assert!(
-                matches!(read, Err(UnitError::MalformedNumber { .. })),
-                "{text}: {read:?}"
-            );
+            assert!(matches!(read, Err(UnitError::MalformedNumber { .. })), "{text}: {read:?}");
         }
     }
 }

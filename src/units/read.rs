@@ -23,19 +23,11 @@ const HUNDREDTHS: i32 = 2;
 /// What is wrong with the text, with the bytes inside it and a help text.
 pub fn read(text: &str, wanted: Dimension) -> Result<f64, UnitError> {
     if text.len() > LONGEST {
-        return Err(UnitError::TooLong {
-            length: text.len(),
-            bytes: 0..text.len(),
-        });
+        return Err(UnitError::TooLong { length: text.len(), bytes: 0..text.len() });
     }
     let number = number::scan(text, wanted)?;
     let rest = &text[number.bytes.end..];
-    let quantity = Quantity {
-        text,
-        bytes: number.bytes.start..text.trim_end().len(),
-        number,
-        wanted,
-    };
+    let quantity = Quantity { text, bytes: number.bytes.start..text.trim_end().len(), number, wanted };
     let from = text.len() - rest.trim_start().len();
     if from == text.len() {
         return quantity.bare();
@@ -99,9 +91,7 @@ impl Quantity<'_> {
                 })
             }
             Some(Kind::Gauge) => {
-                let symbol = self.text[self.number.bytes.end..]
-                    .trim()
-                    .trim_end_matches('g');
+                let symbol = self.text[self.number.bytes.end..].trim().trim_end_matches('g');
                 Err(UnitError::GaugeForPressure {
                     text: self.quoted(),
                     instead: format!("{} {symbol}", self.number.text),
@@ -109,9 +99,7 @@ impl Quantity<'_> {
                 })
             }
             Some(Kind::Angle) => Err(self.wrong(unit)),
-            Some(Kind::Plain | Kind::FromAbsoluteZero | Kind::Difference | Kind::Ratio) | None => {
-                self.scaled(unit)
-            }
+            Some(Kind::Plain | Kind::FromAbsoluteZero | Kind::Difference | Kind::Ratio) | None => self.scaled(unit),
         }
     }
 
@@ -136,10 +124,7 @@ impl Quantity<'_> {
             }
         };
         if kelvin < 0.0 {
-            return Err(UnitError::BelowAbsoluteZero {
-                text: self.quoted(),
-                bytes: self.bytes.clone(),
-            });
+            return Err(UnitError::BelowAbsoluteZero { text: self.quoted(), bytes: self.bytes.clone() });
         }
         Ok(kelvin)
     }
@@ -151,10 +136,7 @@ impl Quantity<'_> {
         let gauge = unit.alone.is_some_and(|alone| alone.kind == Kind::Gauge);
         let pressure = self.scaled(unit)? + if gauge { ATMOSPHERE } else { 0.0 };
         if pressure < 0.0 {
-            return Err(UnitError::BelowVacuum {
-                text: self.quoted(),
-                bytes: self.bytes.clone(),
-            });
+            return Err(UnitError::BelowVacuum { text: self.quoted(), bytes: self.bytes.clone() });
         }
         Ok(pressure)
     }
@@ -166,10 +148,7 @@ impl Quantity<'_> {
     fn finite(&self, value: f64) -> Result<f64, UnitError> {
         if value == 0.0 && !self.number.is_zero() {
             let text = self.quoted();
-            return Err(UnitError::TooSmall {
-                text,
-                bytes: self.bytes.clone(),
-            });
+            return Err(UnitError::TooSmall { text, bytes: self.bytes.clone() });
         }
         self.not_too_large(value)
     }
@@ -178,21 +157,13 @@ impl Quantity<'_> {
         if value.is_finite() {
             return Ok(value);
         }
-        Err(UnitError::TooLarge {
-            text: self.quoted(),
-            bytes: self.bytes.clone(),
-        })
+        Err(UnitError::TooLarge { text: self.quoted(), bytes: self.bytes.clone() })
     }
 
     fn wrong(&self, unit: &Expression) -> UnitError {
         // a unit alone says more than its exponents: degC is a temperature, deg an angle
         let found = unit.alone.map_or(unit.dimension, |alone| alone.dimension);
-        UnitError::WrongDimension {
-            text: self.quoted(),
-            found,
-            wanted: self.wanted,
-            bytes: self.bytes.clone(),
-        }
+        UnitError::WrongDimension { text: self.quoted(), found, wanted: self.wanted, bytes: self.bytes.clone() }
     }
 
     fn no_blank(&self) -> UnitError {
@@ -239,34 +210,18 @@ mod tests {
 
     #[test]
     fn celsius_within_a_unit_is_a_kelvin() {
-        assert_eq!(
-            read("1.88 J/(g degC)", Dimension::HEAT_CAPACITY),
-            Ok(1880.0)
-        );
+        assert_eq!(read("1.88 J/(g degC)", Dimension::HEAT_CAPACITY), Ok(1880.0));
         assert_eq!(read("2 1/degC", Dimension::PER_TEMPERATURE), Ok(2.0));
         assert_eq!(read("9 1/degF", Dimension::PER_TEMPERATURE), Ok(16.2));
     }
 
     #[test]
     fn a_difference_takes_kelvin_or_delta() {
-        for text in [
-            "10 K",
-            "10 delta_degC",
-            "18 delta_degF",
-            "18 degR",
-            "10000 mK",
-        ] {
-            assert_eq!(
-                read(text, Dimension::TEMPERATURE_DIFFERENCE),
-                Ok(10.0),
-                "{text}"
-            );
+        for text in ["10 K", "10 delta_degC", "18 delta_degF", "18 degR", "10000 mK"] {
+            assert_eq!(read(text, Dimension::TEMPERATURE_DIFFERENCE), Ok(10.0), "{text}");
         }
         let degrees = read("10 degC m/m", Dimension::TEMPERATURE);
-        assert!(
-            matches!(degrees, Err(UnitError::DifferenceForTemperature { .. })),
-            "{degrees:?}"
-        );
+        assert!(matches!(degrees, Err(UnitError::DifferenceForTemperature { .. })), "{degrees:?}");
     }
 
     #[test]
@@ -282,15 +237,7 @@ mod tests {
 
     #[test]
     fn ratios_are_bare_or_parts_or_cancel_out() {
-        for text in [
-            "0.2",
-            "20 %",
-            "20%",
-            "200000 ppm",
-            "0.2 kg/kg",
-            "0.2 mol/mol",
-            "200 g/kg",
-        ] {
+        for text in ["0.2", "20 %", "20%", "200000 ppm", "0.2 kg/kg", "0.2 mol/mol", "200 g/kg"] {
             assert_eq!(read(text, Dimension::RATIO), Ok(0.2), "{text}");
         }
     }
@@ -298,10 +245,7 @@ mod tests {
     #[test]
     fn angles_need_a_unit() {
         assert_eq!(read("180 deg", Dimension::ANGLE), Ok(std::f64::consts::PI));
-        assert_eq!(
-            read("90°", Dimension::ANGLE),
-            Ok(std::f64::consts::FRAC_PI_2)
-        );
+        assert_eq!(read("90°", Dimension::ANGLE), Ok(std::f64::consts::FRAC_PI_2));
         for text in ["1", "1 %", "1 m/m"] {
             assert!(read(text, Dimension::ANGLE).is_err(), "{text}");
         }
@@ -352,12 +296,7 @@ mod tests {
             format!("1 {}", "k".repeat(198)),
         ];
         let texts = ODD.iter().copied().chain(long.iter().map(String::as_str));
-        let wanted = [
-            Dimension::RATIO,
-            Dimension::TEMPERATURE,
-            Dimension::PRESSURE_LEVEL,
-            Dimension::ANGLE,
-        ];
+        let wanted = [Dimension::RATIO, Dimension::TEMPERATURE, Dimension::PRESSURE_LEVEL, Dimension::ANGLE];
         for text in texts {
             for dimension in wanted {
                 match read(text, dimension) {
@@ -373,23 +312,17 @@ mod tests {
 
     #[test]
     fn random_texts_are_read_or_refused_without_a_panic() {
-        let letters: Vec<char> = "01259.,-+eE/()^*· mKPadegCsµ°²⁻%_x'½℃é😀\u{301}"
-            .chars()
-            .collect();
+        let letters: Vec<char> = "01259.,-+eE/()^*· mKPadegCsµ°²⁻%_x'½℃é😀\u{301}".chars().collect();
         // a linear congruential generator is random enough here and the same everywhere
         let mut state = 2_u64;
         let mut draw = |below: usize| {
-            state = state
-                .wrapping_mul(6_364_136_223_846_793_005)
-                .wrapping_add(1_442_695_040_888_963_407);
+            state = state.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
             usize::try_from(state >> 40).expect("24 bits fit") % below
         };
         let dimensions: Vec<Dimension> = named().collect();
         for _ in 0..50_000 {
             let head = ["", "1 ", "5 m/", "2 W/(m2 "][draw(4)];
-            let tail: String = (0..draw(12))
-                .map(|_| letters[draw(letters.len())])
-                .collect();
+            let tail: String = (0..draw(12)).map(|_| letters[draw(letters.len())]).collect();
             let text = format!("{head}{tail}");
             if let Err(error) = read(&text, dimensions[draw(dimensions.len())]) {
                 assert!(text.get(error.bytes()).is_some(), "{text:?}: {error:?}");

@@ -85,10 +85,8 @@ pub fn show_number(value: f64, digits: usize) -> String {
     }
     // digits that were rounded away stay away: 123456 with five digits is 123460
     let plain: f64 = rounded.parse().unwrap_or(value);
-    let decimals = usize::try_from(power).map_or_else(
-        |_| digits - 1 + power.unsigned_abs() as usize,
-        |power| (digits - 1).saturating_sub(power),
-    );
+    let decimals = usize::try_from(power)
+        .map_or_else(|_| digits - 1 + power.unsigned_abs() as usize, |power| (digits - 1).saturating_sub(power));
     without_zeros(&format!("{plain:.decimals$}")).to_owned()
 }
 
@@ -97,10 +95,7 @@ fn rounded(value: f64, digits: usize) -> (String, i32) {
     let text = format!("{value:.*e}", digits - 1);
     let power = text.split_once('e').map(|(_, power)| power.parse());
     let power = power.expect("the format has an exponent");
-    (
-        text,
-        power.expect("the exponent is a whole number of few digits"),
-    )
+    (text, power.expect("the exponent is a whole number of few digits"))
 }
 
 /// What a unit is in SI. It comes from the one table of units, so that a report cannot disagree
@@ -113,11 +108,7 @@ fn size(unit: &str, dimension: Dimension) -> f64 {
 }
 
 fn without_zeros(number: &str) -> &str {
-    if number.contains('.') {
-        number.trim_end_matches('0').trim_end_matches('.')
-    } else {
-        number
-    }
+    if number.contains('.') { number.trim_end_matches('0').trim_end_matches('.') } else { number }
 }
 
 /// Near 0 degC the digits of the number would be finer than those of the temperature: decimals
@@ -141,20 +132,13 @@ fn unit_for(value: f64, dimension: Dimension) -> String {
         let fits = |&&(unit, least): &&Step| at_least(size, unit, least, dimension);
         let small = RATIO_STEPS.iter().find(fits).map_or("", |&(unit, _)| unit);
         let unit = if size == 0.0 { "%" } else { small };
-        return if size > 1.0 {
-            String::new()
-        } else {
-            unit.to_owned()
-        };
+        return if size > 1.0 { String::new() } else { unit.to_owned() };
     }
     let Some((_, steps)) = STEPS.iter().find(|(of, _)| *of == dimension) else {
         return symbol(dimension);
     };
     let fits = |&&(unit, least): &&Step| size == 0.0 || at_least(size, unit, least, dimension);
-    steps
-        .iter()
-        .find(fits)
-        .map_or_else(|| symbol(dimension), |&(unit, _)| unit.to_owned())
+    steps.iter().find(fits).map_or_else(|| symbol(dimension), |&(unit, _)| unit.to_owned())
 }
 
 fn at_least(size: f64, unit: &str, least: f64, dimension: Dimension) -> bool {
@@ -231,10 +215,7 @@ mod tests {
                 // half a unit of the fifth digit, for degC of the scale's own number
                 let offset = dimension == Dimension::TEMPERATURE;
                 let play = if offset { 5.1e-5 * CELSIUS_ZERO } else { 0.0 };
-                assert!(
-                    (back - value).abs() <= 5.1e-5 * value + play,
-                    "{text}: {value}"
-                );
+                assert!((back - value).abs() <= 5.1e-5 * value + play, "{text}: {value}");
             }
         }
     }

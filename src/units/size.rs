@@ -13,12 +13,7 @@ pub(super) struct Size {
 
 impl Size {
     /// Size of 1.
-    pub(super) const ONE: Self = Self {
-        dimension: Dimension::RATIO,
-        numerator: 1.0,
-        denominator: 1.0,
-        decade: 0.0,
-    };
+    pub(super) const ONE: Self = Self { dimension: Dimension::RATIO, numerator: 1.0, denominator: 1.0, decade: 0.0 };
 
     pub(super) fn times(self, other: Self) -> Self {
         Self {

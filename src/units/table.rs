@@ -103,14 +103,12 @@ const PREFIXES: &[(&str, i32)] = &[
 
 const NONE: &[&str] = &[];
 /// All powers of a thousand.
-const THOUSANDS: &[&str] = &[
-    "k", "m", "M", "u", "n", "G", "p", "T", "f", "P", "a", "E", "z", "Z", "y", "Y", "r", "R", "q",
-    "Q",
-];
+const THOUSANDS: &[&str] =
+    &["k", "m", "M", "u", "n", "G", "p", "T", "f", "P", "a", "E", "z", "Z", "y", "Y", "r", "R", "q", "Q"];
 /// The same with the steps of ten that length, mass and pressure are written in.
 const EVERY: &[&str] = &[
-    "k", "m", "c", "M", "d", "u", "h", "n", "G", "da", "p", "T", "f", "P", "a", "E", "z", "Z", "y",
-    "Y", "r", "R", "q", "Q",
+    "k", "m", "c", "M", "d", "u", "h", "n", "G", "da", "p", "T", "f", "P", "a", "E", "z", "Z", "y", "Y", "r", "R", "q",
+    "Q",
 ];
 const SMALL: &[&str] = &["m", "u", "n"];
 const LITRE: &[&str] = &["m", "c", "d", "u", "h", "k", "n"];
@@ -245,10 +243,7 @@ mod tests {
     fn every_prefix_of_a_unit_has_its_power_of_ten() {
         for unit in all() {
             for prefix in unit.prefixes {
-                assert!(
-                    PREFIXES.iter().any(|(known, _)| known == prefix),
-                    "{prefix}"
-                );
+                assert!(PREFIXES.iter().any(|(known, _)| known == prefix), "{prefix}");
             }
         }
         assert_eq!(find("µm").map(|(_, decade)| decade), Some(-6));
@@ -310,15 +305,9 @@ mod tests {
         for &(unit, dimension, exact, printed) in PRINTED {
             let value = read(&format!("1 {unit}"), dimension).expect("each row is a known unit");
             // twelve digits are given for the longest definitions
-            assert!(
-                relative(value, exact) < 1e-10,
-                "{unit}: {value} against {exact}"
-            );
+            assert!(relative(value, exact) < 1e-10, "{unit}: {value} against {exact}");
             // seven digits are printed
-            assert!(
-                relative(value, printed) < 5e-7,
-                "{unit}: {value} against {printed}"
-            );
+            assert!(relative(value, printed) < 5e-7, "{unit}: {value} against {printed}");
         }
     }
 

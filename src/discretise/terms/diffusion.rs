@@ -52,14 +52,7 @@ fn common(layout: &Layout, state: &[f64], profile: &mut Profile, gradient: f64, 
 }
 
 /// P J of every amount with unlike diffusivities.
-fn closed_on_mass(
-    material: &Material,
-    layout: &Layout,
-    state: &[f64],
-    profile: &mut Profile,
-    gradient: f64,
-    i: usize,
-) {
+fn closed_on_mass(material: &Material, layout: &Layout, state: &[f64], profile: &mut Profile, gradient: f64, i: usize) {
     let n = material.n_components();
     let closing = material.mixture.closing();
     let (inner, outer) = (&state[layout.tube(i)], &state[layout.tube(i + 1)]);

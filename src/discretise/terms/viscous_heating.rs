@@ -20,9 +20,7 @@ pub fn friction_heat(shape: Shape, tube: &Tube, profile: &Profile, i: usize) -> 
             let mean_velocity = profile.volume_flow() / tube.area();
             geometry.areas[i] * viscosity * square_rate(tube, mean_velocity, geometry.mean_square(i))
         }
-        Shape::FromViscosity => {
-            geometry.areas[i] * gradient * gradient * geometry.mean_square(i) / (4.0 * viscosity)
-        }
+        Shape::FromViscosity => geometry.areas[i] * gradient * gradient * geometry.mean_square(i) / (4.0 * viscosity),
     }
 }
 

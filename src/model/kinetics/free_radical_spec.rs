@@ -16,9 +16,19 @@ pub const ABOUT: About = About {
                −d[M]/dt = R_p + R_I + T_r λ₀",
     source: "method of moments (common practice); Odian, Principles of Polymerization (from memory)",
     keys: &[
-        Key { name: "scheme", takes: Takes::Text, need: Need::Required("free_radical"), meaning: "which scheme this is" },
+        Key {
+            name: "scheme",
+            takes: Takes::Text,
+            need: Need::Required("free_radical"),
+            meaning: "which scheme this is",
+        },
         Key { name: "monomer", takes: Takes::Name("species"), need: Need::Required("styrene"), meaning: "the monomer" },
-        Key { name: "polymer", takes: Takes::Name("species"), need: Need::Required("polystyrene"), meaning: "the polymer" },
+        Key {
+            name: "polymer",
+            takes: Takes::Name("species"),
+            need: Need::Required("polystyrene"),
+            meaning: "the polymer",
+        },
         Key {
             name: "initiators",
             takes: Takes::Named(&INITIATOR),
@@ -222,9 +232,8 @@ impl FreeRadical {
         if let Some(gel) = gel {
             fields.take(gel.finish(()));
         }
-        let thermal = fields.child("thermal_initiation").map_or(Some(Thermal::None), |child| {
-            fields.take(read_thermal(&child))
-        });
+        let thermal =
+            fields.child("thermal_initiation").map_or(Some(Thermal::None), |child| fields.take(read_thermal(&child)));
         let initiators = read_initiators(&fields, species);
         let transfer = read_transfer(&fields, species, polymer);
         let heat = fields.child("heat").and_then(|child| fields.take(read_heat(&child)));
@@ -314,7 +323,11 @@ fn read_termination(fields: &Fields<'_>) -> ([Option<RateConstant>; 2], f64) {
         block.problem(SpecError::NoneOf { at: place(), block: child.name(), keys });
     } else if block.has("combination_share") {
         let (at, key) = (block.place_of("combination_share"), "combination_share".to_owned());
-        block.problem(SpecError::DoesNotGoWith { at, key, with: "`by_combination` and `by_disproportionation`".to_owned() });
+        block.problem(SpecError::DoesNotGoWith {
+            at,
+            key,
+            with: "`by_combination` and `by_disproportionation`".to_owned(),
+        });
     }
     let _ = fields.take(block.finish(()));
     match total {

@@ -1,9 +1,9 @@
 //! Reactions of any stoichiometry and order, reversible or not (model page, §6).
 
 use super::rate_constant::{self, RateConstant};
+use crate::model::GAS_CONSTANT;
 use crate::model::number::Number;
 use crate::model::species::SpeciesList;
-use crate::model::GAS_CONSTANT;
 use crate::spec::{About, Block, Bound, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes, unknown_name};
 use crate::units::{self, Dimension};
 
@@ -50,7 +50,12 @@ pub const ABOUT: About = About {
             need: Need::Required("{prefactor: 5e9 1/s, activation_energy: 75 kJ/mol}"),
             meaning: "the rate constant, in mol, m3, s to the order",
         },
-        Key { name: "constants", takes: Takes::Other("numbers"), need: Need::Later, meaning: "constants of the expression" },
+        Key {
+            name: "constants",
+            takes: Takes::Other("numbers"),
+            need: Need::Later,
+            meaning: "constants of the expression",
+        },
         Key {
             name: "equilibrium_constant",
             takes: Takes::Block(&EQUILIBRIUM),

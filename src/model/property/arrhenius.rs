@@ -1,8 +1,8 @@
 //! Properties that rise (`arrhenius`) or fall (`andrade`) exponentially with temperature.
 
+use crate::model::GAS_CONSTANT;
 use crate::model::number::Number;
 use crate::spec::{About, Block, Bound, Fields, Key, Need, Reported, SpecError, Takes};
-use crate::model::GAS_CONSTANT;
 use crate::units::Dimension;
 
 use super::{KIND, VALID};

@@ -48,11 +48,7 @@ impl Linear {
     /// A key that is missing, unknown or of the wrong dimension.
     pub fn read(block: &Block<'_>, subject: Dimension) -> Result<Self, Reported> {
         let fields = block.open_for(&ABOUT, subject);
-        let law = Self {
-            value: fields.quantity("value"),
-            at: fields.quantity("at"),
-            slope: fields.quantity("slope"),
-        };
+        let law = Self { value: fields.quantity("value"), at: fields.quantity("at"), slope: fields.quantity("slope") };
         super::skip_range(&fields);
         fields.finish(law)
     }

@@ -11,8 +11,12 @@ use crate::spec::{About, Block, Key, Need, Reported, Takes};
 use crate::units::Dimension;
 
 /// The key of shear-dependent laws.
-pub const SHEAR: Key =
-    Key { name: "shear", takes: Takes::Other("a law of shear"), need: Need::Later, meaning: "how shear lowers the viscosity" };
+pub const SHEAR: Key = Key {
+    name: "shear",
+    takes: Takes::Other("a law of shear"),
+    need: Need::Later,
+    meaning: "how shear lowers the viscosity",
+};
 
 /// Laws of temperature alone.
 pub const PLAIN_KINDS: &[&About] = property::KINDS;

@@ -58,8 +58,7 @@ impl VogelFulcherTammann {
     /// A key that is missing, unknown or of the wrong dimension; `b` not positive.
     pub fn read(block: &Block<'_>) -> Result<Self, Reported> {
         let fields = block.open(&ABOUT);
-        let law =
-            Self { eta_inf: fields.quantity("eta_inf"), b: fields.quantity("b"), t_0: fields.quantity("t_0") };
+        let law = Self { eta_inf: fields.quantity("eta_inf"), b: fields.quantity("b"), t_0: fields.quantity("t_0") };
         skip_range(&fields);
         fields.finish(law)
     }

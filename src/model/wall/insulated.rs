@@ -3,13 +3,8 @@
 use crate::model::property::KIND;
 use crate::spec::{About, Block, Reported};
 
-pub const ABOUT: About = About {
-    kind: "insulated",
-    summary: "no heat passes the wall",
-    equation: "q_w = 0",
-    source: "",
-    keys: &[KIND],
-};
+pub const ABOUT: About =
+    About { kind: "insulated", summary: "no heat passes the wall", equation: "q_w = 0", source: "", keys: &[KIND] };
 
 /// Reads the wall.
 ///

@@ -18,7 +18,12 @@ pub const ABOUT: About = About {
             need: Need::Required("300 W/(m2 K)"),
             meaning: "from the coolant to the wetted surface, on its area; the fluid's own film is resolved, not put in here",
         },
-        Key { name: "layers", takes: Takes::Other("a list"), need: Need::Later, meaning: "layers in place of `coefficient`" },
+        Key {
+            name: "layers",
+            takes: Takes::Other("a list"),
+            need: Need::Later,
+            meaning: "layers in place of `coefficient`",
+        },
         Key {
             name: "coolant",
             takes: Takes::Block(&coolant::ABOUT),
@@ -35,6 +40,8 @@ pub struct Jacket {
     pub coefficient: f64,
     /// T_c [K].
     pub coolant_temperature: f64,
+    /// The line of `coolants`, if it is one.
+    pub coolant: Option<String>,
 }
 
 impl Jacket {
@@ -48,6 +55,7 @@ impl Jacket {
         let jacket = Self {
             coefficient: fields.quantity("coefficient"),
             coolant_temperature: coolant.flatten().unwrap_or(f64::NAN),
+            coolant: fields.child("coolant").and_then(|child| child.node().text().map(str::to_owned)),
         };
         fields.finish(jacket)
     }
