@@ -95,6 +95,13 @@ fn the_project_speaks_of_itself_alone() {
     holds_everywhere(foreign_words);
 }
 
+#[test]
+fn the_law_on_the_style_page_is_the_one_in_the_code() {
+    let page = std::fs::read_to_string(root().join("docs/style.md")).expect("the style page is there");
+    let law = std::fs::read_to_string(root().join("src/model/rheology/vogel_fulcher_tammann.rs"));
+    assert!(shows(&page, &law.expect("the law is there")), "bring the law in `docs/style.md`, section 2, up to date");
+}
+
 // ---- what each rule looks for
 
 /// Imports and paths that lead to a later stage of the pipeline, or to nothing in it.
@@ -181,6 +188,14 @@ fn foreign_words(_: &str, text: &str) -> Vec<String> {
         FOREIGN_WORDS.iter().any(|word| line.contains(word))
     };
     lines_where(text, has, "has a word that does not belong")
+}
+
+/// Whether the first Rust example of a page is this file up to its tests, but for layout.
+fn shows(page: &str, file: &str) -> bool {
+    let example = page.split("```rust").nth(1).and_then(|rest| rest.split("```").next()).unwrap_or_default();
+    let law = file.split("#[cfg(test)]").next().unwrap_or_default();
+    let bare = |text: &str| text.chars().filter(|c| !c.is_whitespace() && *c != ',').collect::<String>();
+    !example.is_empty() && bare(example) == bare(law)
 }
 
 // ---- each rule catches a violation
@@ -291,6 +306,14 @@ fn a_foreign_word_is_found_in_any_case() {
         assert_eq!(foreign_words("README.md", &format!("a\nthe {}s", word.to_uppercase())).len(), 1, "{word}");
     }
     assert!(foreign_words("README.md", "architecture of a manuscript").is_empty());
+}
+
+#[test]
+fn an_example_that_differs_from_its_file_is_found() {
+    let page = "text\n```rust\nfn f(\n    a: u8,\n) {}\n```\n";
+    assert!(shows(page, "fn f(a: u8) {}\n#[cfg(test)]\nmod tests {}"));
+    assert!(!shows(page, "fn f(b: u8) {}"));
+    assert!(!shows("no example", ""));
 }
 
 #[test]

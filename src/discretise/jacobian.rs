@@ -141,7 +141,7 @@ impl System<'_> {
         let material = self.material();
         let n = material.n_components();
         let mobility = |k: usize| 0.5 * (profile.transport[i * n + k] + profile.transport[(i + 1) * n + k]);
-        let of_closing = mobility(material.mixture.closing());
+        let of_closing = mobility(n - 1);
         for k in 0..self.layout.n_amounts {
             let own = mobility(if k < self.layout.n_species { k } else { n - 1 });
             let mean = 0.5 * (state[self.layout.amount(i, k)] + state[self.layout.amount(i + 1, k)]);

@@ -8,6 +8,9 @@ use crate::discretise::layout::{INTEGRALS, Integral};
 use crate::discretise::rhs::System;
 use crate::model::plant::Plant;
 
+/// Places nearer than this share of a section are one: they differ by the rounding of sums of lengths.
+const SAME_PLACE: f64 = 1e-12;
+
 /// A whole run: one leg a section, as far as it came.
 #[derive(Debug)]
 pub struct Trajectory<'p> {
@@ -97,6 +100,7 @@ fn targets(plant: &Plant, start: f64, length: f64, places: &[f64]) -> Vec<f64> {
     let mut targets: Vec<f64> = inside.filter(|z| *z > 0.0 && *z < length).collect();
     targets.extend([0.0, length]);
     targets.sort_by(f64::total_cmp);
-    targets.dedup();
+    targets.dedup_by(|next, kept| *next - *kept < SAME_PLACE * length);
+    *targets.last_mut().expect("the outlet is among them") = length;
     targets
 }

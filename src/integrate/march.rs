@@ -15,6 +15,8 @@ use crate::discretise::rhs::System;
 const FIRST_PROBE: f64 = 1e-4;
 /// Steps after which a run is given up: a tolerance of 1e-12 needs some 10⁵.
 const MOST_STEPS: usize = 1_000_000;
+/// Least step, as a share of the section's length: an explosion at the inlet may be that short.
+const LEAST_STEP: f64 = 1e-19;
 /// A place along z is found to this share of the section's length.
 const PLACE_TOLERANCE: f64 = 1e-7;
 /// The golden section's ratio, (√5 − 1)/2.
@@ -77,6 +79,7 @@ pub fn march(system: &System<'_>, inlet: Vec<f64>, limits: Vec<Limit>, targets: 
         .map_err(|error| failed(&error))?;
     let options = &mut problem.ode_options;
     options.max_number_timesteps = MOST_STEPS;
+    options.min_timestep = LEAST_STEP * length;
     options.update_rhs_jacobian_after_steps = 20;
     options.update_jacobian_after_steps = 10;
     options.max_timestep_growth = Some(5.0);

@@ -3,6 +3,8 @@
 
 use crate::discretise::layout::{INTEGRALS, Integral};
 use crate::discretise::rhs::System;
+use crate::model::kinetics::Scheme;
+use crate::model::local::Material;
 
 /// Scale of temperatures [K].
 const TEMPERATURE_SCALE: f64 = 100.0;
@@ -53,11 +55,19 @@ fn tube_scales(system: &System<'_>) -> Vec<f64> {
         })
         .collect();
     if material.has_polymer() {
-        let units = material.unit_mass().recip();
+        let units = monomer_units(material, fed);
         scales.extend([units / CHAIN_LENGTH, units, units * CHAIN_LENGTH]);
     }
     scales.push(TEMPERATURE_SCALE);
     scales
+}
+
+/// Monomer and bound units of the feed, n_M + μ₁ [mol/kg].
+fn monomer_units(material: &Material, fed: &[f64]) -> f64 {
+    match &material.chemistry.scheme {
+        Scheme::None => 0.0,
+        Scheme::FreeRadical(scheme) => fed[scheme.monomer] + fed[material.n_species() + 1],
+    }
 }
 
 /// c_p of the feed [J/(kg K)].

@@ -238,10 +238,11 @@ fn read_values(
             failed = true;
             continue;
         };
-        if basis != Basis::Mass {
+        let is_rest = item.node().text() == Some("rest");
+        if basis == Basis::Mole || basis == Basis::Concentration && !is_rest {
             failed |= !counts_in_moles(fields, k, key, species, scheme);
         }
-        if item.node().text() == Some("rest") {
+        if is_rest {
             item.resolve("rest".to_owned());
             if rest.replace(k).is_some() {
                 fields.problem(SpecError::TwoRests { at: item.place(), key: key.to_owned() });

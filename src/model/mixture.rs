@@ -53,7 +53,7 @@ pub const ABOUT: About = About {
             name: "closing_species",
             takes: Takes::Name("species"),
             need: Need::Optional,
-            meaning: "species whose diffusivity closes the mass balance of diffusion; absent: the polymer, else the largest",
+            meaning: "refused: the mass balance of diffusion closes the same whichever species is named",
         },
     ],
 };
@@ -159,8 +159,6 @@ pub struct Mixture {
     conductivity: Shared,
     diffusivity: Diffusivity,
     viscosity: Option<Viscosity>,
-    /// Component whose diffusivity closes the diffusion on mass.
-    closing: usize,
     ranges: Vec<(String, (f64, f64))>,
 }
 
@@ -171,7 +169,6 @@ pub struct MixtureBlock {
     places: [crate::spec::Place; 4],
     /// Viscosity, if given.
     pub viscosity: Option<Viscosity>,
-    closing: Option<usize>,
 }
 
 impl MixtureBlock {
@@ -184,8 +181,7 @@ impl MixtureBlock {
         let which = [Which::Density, Which::HeatCapacity, Which::Conductivity, Which::Diffusivity];
         let laws = which.map(|which| (which, read_law(&fields, which)));
         let viscosity = fields.child("viscosity").and_then(|child| fields.take(Viscosity::read(&child)));
-        let closing =
-            fields.child("closing_species").and_then(|child| fields.take(child.choose("species", &species.names)));
+        let _ = fields.child("closing_species"); // refused where the run's species are known
         for (which, law) in &laws {
             let own = species.items.iter().find(|species| species.law(*which).is_some());
             if let (Some(_), Some(own)) = (law, own) {
@@ -198,20 +194,14 @@ impl MixtureBlock {
             }
         }
         let places = which.map(|which| fields.place_of(which.key()));
-        fields.finish(Self { laws, places, viscosity, closing })
+        fields.finish(Self { laws, places, viscosity })
     }
 
     /// The mixture of the species that a run has.
     ///
     /// # Errors
     /// A species lacks a property that the run needs.
-    pub fn build(
-        &self,
-        block: &Block<'_>,
-        components: &[&Species],
-        closing: usize,
-        names: &dyn Fn(usize) -> Option<usize>,
-    ) -> Result<Mixture, Reported> {
+    pub fn build(&self, block: &Block<'_>, components: &[&Species]) -> Result<Mixture, Reported> {
         let mut failed = false;
         let mut ranges = Vec::new();
         let mut shared = |which: Which| -> Option<Vec<Property>> {
@@ -268,7 +258,6 @@ impl MixtureBlock {
             conductivity: grouped(conductivity),
             diffusivity,
             viscosity: self.viscosity.clone(),
-            closing: self.closing.and_then(names).unwrap_or(closing),
             ranges,
         })
     }
@@ -372,12 +361,6 @@ impl Mixture {
             Diffusivity::One(law) => law.at(temperature).at_least(0.0),
             Diffusivity::Each(laws) => laws[component].at(temperature).at_least(0.0),
         }
-    }
-
-    /// Component whose diffusivity closes the diffusion on mass.
-    #[must_use]
-    pub fn closing(&self) -> usize {
-        self.closing
     }
 
     /// Whether a viscosity was given.

@@ -178,6 +178,7 @@ impl Plant {
         material.set_scales(&feed);
         let (limits, numerics) = (limits.ok_or(Reported)?, numerics.ok_or(Reported)?);
         check_feed_within_limits(fields, &feed, &limits);
+        check_limits_apply(fields, &material, &feed);
         if !top.reader().is_clean() {
             return Err(Reported);
         }
@@ -222,7 +223,6 @@ impl Parts<'_> {
 
     fn material(self, fields: &Fields<'_>, mixture_block: &Block<'_>, output: &Output) -> Result<Material, Reported> {
         let present = self.present();
-        let largest = self.largest(&present);
         let new = |k: usize| present.iter().position(|other| *other == k);
         let polymer = self.scheme.polymer();
         let scheme = match self.scheme {
@@ -243,9 +243,8 @@ impl Parts<'_> {
             .collect();
         let mut components: Vec<&Species> = present.iter().map(|k| &self.species.items[*k]).collect();
         components.extend(polymer.map(|k| &self.species.items[k]));
-        let closing = polymer.map_or(largest, |_| present.len());
-        let named = |k: usize| if Some(k) == polymer { Some(present.len()) } else { new(k) };
-        let mixture = self.mixture.build(mixture_block, &components, closing, &named)?;
+        let mixture = self.mixture.build(mixture_block, &components)?;
+        check_closing(mixture_block)?;
         let small: Vec<&Species> = present.iter().map(|k| &self.species.items[*k]).collect();
         let conversion_of = match output.conversion_of {
             Some(k) if new(k).is_none() => {
@@ -269,16 +268,6 @@ impl Parts<'_> {
             chemistry: Chemistry { reactions, scheme, power_epsilon: f64::NAN },
             conversion_of,
         })
-    }
-
-    /// The species with the largest fraction in the feed, among those the run has.
-    fn largest(&self, present: &[usize]) -> usize {
-        let value = |k: usize| {
-            let given = self.stream.values.iter().find(|(other, _)| *other == k).map_or(0.0, |(_, value)| *value);
-            let sum: f64 = self.stream.values.iter().map(|(_, value)| value).sum();
-            if self.stream.rest == Some(k) { (1.0 - sum).max(0.0) } else { given }
-        };
-        (0..present.len()).max_by(|a, b| value(present[*a]).total_cmp(&value(present[*b]))).unwrap_or(0)
     }
 }
 
@@ -406,6 +395,32 @@ fn check_volume(fields: &Fields<'_>, material: &Material, masses: &[f64], temper
         return Err(Reported);
     }
     Ok(())
+}
+
+/// The closing flux is the same whichever species closes it, since Σ M_k ∂n_k/∂r = 0 without a polymer; with
+/// one, the polymer closes it. A key that cannot change anything is refused.
+fn check_closing(block: &Block<'_>) -> Result<(), Reported> {
+    let Some(child) = block.child_of("closing_species") else { return Ok(()) };
+    let (at, key) = (child.place(), "closing_species".to_owned());
+    let with = "any mixture: the balance closes the same whichever species is named; leave it out".to_owned();
+    Err(block.refuse(SpecError::DoesNotGoWith { at, key, with }))
+}
+
+/// A limit on what the run does not have would be read and ignored.
+fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed: &Feed) {
+    let Some(limits) = fields.child("limits") else { return };
+    let refuse = |key: &'static str, applies: bool, needs: &str| {
+        if let Some(child) = limits.child_of(key)
+            && !applies
+        {
+            let (at, key) = (child.place(), format!("limits.{key}"));
+            fields.problem(SpecError::Needs { at, key, needs: needs.to_owned() });
+        }
+    };
+    refuse("pressure", feed.pressure.is_some(), "`feed.pressure`");
+    refuse("viscosity", material.mixture.has_viscosity(), "`mixture.viscosity`");
+    refuse("polymer_fraction", material.has_polymer(), "a `polymerization`");
+    refuse("dispersity", material.has_polymer(), "a `polymerization`");
 }
 
 fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits: &Limits) {

@@ -4,6 +4,9 @@ use std::ops::Range;
 
 use super::view::{RunView, StationView};
 
+/// r/R this close to 1 is the wall itself.
+const ROUNDING: f64 = 1e-12;
+
 /// The hottest point.
 #[derive(Clone, Debug, PartialEq)]
 pub struct HotSpot {
@@ -44,7 +47,7 @@ impl HotSpot {
         let inlet = run.sections[first].first().map_or(f64::NAN, |station| station.z);
         let outlet = run.sections[last].last().map_or(f64::NAN, |station| station.z);
         let note = match station.z {
-            _ if position >= 1.0 => Some("at the wall"),
+            _ if position >= 1.0 - ROUNDING => Some("at the wall"),
             z if z <= inlet => Some("at the inlet"),
             z if z >= outlet => Some("at the end: it may be hotter beyond"),
             _ => None,

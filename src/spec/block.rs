@@ -39,6 +39,8 @@ pub struct Block<'a> {
     held: Held<'a>,
     path: KeyPath,
     order: Vec<Step>,
+    /// Whether the value stands for the key `value` of the block it is short for.
+    short: bool,
     /// The source that holds here.
     source: Option<Given>,
 }
@@ -47,7 +49,7 @@ impl<'a> Block<'a> {
     /// The top of a spec.
     #[must_use]
     pub fn top(reader: &'a Reader, root: &'a Node) -> Self {
-        Self { reader, held: Held::Tree(root), path: KeyPath::default(), order: Vec::new(), source: None }
+        Self { reader, held: Held::Tree(root), path: KeyPath::default(), order: Vec::new(), short: false, source: None }
     }
 
     /// Who gathers what is found.
@@ -294,7 +296,8 @@ impl<'a> Block<'a> {
     /// Notes the value for the resolved listing.
     pub fn resolve(&self, value: String) {
         let origin = origin_mark(self.node(), self.tree().is_none());
-        self.reader.resolve(self.order.clone(), ResolvedLine { path: self.path.clone(), value, origin });
+        let path = if self.short { self.path.child("value") } else { self.path.clone() };
+        self.reader.resolve(self.order.clone(), ResolvedLine { path, value, origin });
     }
 
     /// Notes where the numbers of this block come from.
@@ -310,7 +313,7 @@ impl<'a> Block<'a> {
     /// A key's value below this block.
     pub(super) fn below(&self, key: &str, position: usize, node: &'a Node) -> Block<'a> {
         if self.tree().is_some_and(|here| std::ptr::eq(here, node)) {
-            return self.clone(); // a scalar that stands for the key `value`
+            return Block { short: true, ..self.clone() };
         }
         self.step_to(key, Step::Key(position), Held::Tree(node))
     }
@@ -331,8 +334,14 @@ impl<'a> Block<'a> {
     fn step_to(&self, step: &str, order_step: Step, held: Held<'a>) -> Block<'a> {
         let mut order = self.order.clone();
         order.push(order_step);
-        let mut block =
-            Block { reader: self.reader, held, path: self.path.child(step), order, source: self.source.clone() };
+        let mut block = Block {
+            reader: self.reader,
+            held,
+            path: self.path.child(step),
+            order,
+            short: false,
+            source: self.source.clone(),
+        };
         block.inherit_source();
         block
     }

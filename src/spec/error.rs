@@ -20,7 +20,7 @@ pub enum SpecError {
     NotYaml { at: Place, reason: String },
     #[error("blocks are nested deeper than {limit}")]
     TooDeep { at: Place, limit: usize },
-    #[error("the file has more than {limit} values once its aliases are expanded")]
+    #[error("the file has more than {limit} values once aliases and `like` are expanded")]
     TooMany { at: Place, limit: usize },
     #[error("a second document begins here")]
     SecondDocument { at: Place },
@@ -34,13 +34,13 @@ pub enum SpecError {
     DuplicateKey { at: Place, key: String, first: Location },
     #[error("`{text}` is not a finite number")]
     NotFinite { at: Place, text: String },
-    #[error("two readers of YAML understand this differently: one sees {one}, the other {other}")]
+    #[error("this can be read in two ways: as {one}, or as {other}")]
     Ambiguous { at: Place, one: String, other: String },
 
     // ---- format, parts, paths
-    #[error("the file does not say which format it has")]
+    #[error("the file does not begin with its format")]
     NoFormat { at: Place, wanted: &'static str },
-    #[error("`{found}` is not a format this file can have")]
+    #[error("{} is not a format this file can have", typed(.found))]
     WrongFormat { at: Place, found: String, wanted: &'static str },
     #[error("`{found}` is newer than this version of axirad reads")]
     NewerFormat { at: Place, found: String },
@@ -66,7 +66,7 @@ pub enum SpecError {
     BothOf { at: Place, block: String, one: &'static str, other: &'static str },
     #[error("`{key}` needs {wanted}, but {found} stands here")]
     WrongShape { at: Place, key: String, wanted: &'static str, found: &'static str },
-    #[error("`{found}` is not a kind of {what}")]
+    #[error("{} is not a kind of {what}", typed(.found))]
     UnknownKind { at: Place, what: &'static str, found: String, nearest: Option<String>, known: Vec<&'static str> },
     #[error("`{word}` is not a word for `{key}`")]
     UnknownWord { at: Place, key: String, word: String, nearest: Option<String>, known: Vec<&'static str> },
@@ -105,15 +105,15 @@ pub enum SpecError {
     LikeCircle { at: Place, name: String },
 
     // ---- meaning
-    #[error("the fractions of `{key}` add up to {sum}, not to 1")]
+    #[error("{}, not 1", sum_of(.key, *.sum))]
     SumNotOne { at: Place, key: String, sum: f64 },
     #[error("`rest` stands twice in `{key}`")]
     TwoRests { at: Place, key: String },
-    #[error("nothing is left for `rest` in `{key}`: the others add up to {sum}")]
+    #[error("{}: nothing is left for `rest`", sum_of(.key, *.sum))]
     NoRest { at: Place, key: String, sum: f64 },
     #[error("reaction `{reaction}` does not conserve mass: {consumed} consumed, {made} made")]
     MassNotBalanced { at: Place, reaction: String, consumed: String, made: String },
-    #[error("reaction `{reaction}` does not conserve {element}: {consumed} consumed, {made} made")]
+    #[error("reaction `{reaction}` does not conserve {element}: {} consumed, {} made", rounded(*.consumed), rounded(*.made))]
     ElementNotBalanced { at: Place, reaction: String, element: String, consumed: f64, made: f64 },
     #[error("`{formula}` is not a chemical formula")]
     BadFormula { at: Place, formula: String },
@@ -143,10 +143,34 @@ pub enum SpecError {
 
 /// `a`, `b` or `c`.
 pub(crate) fn list(words: &[impl AsRef<str>]) -> String {
+    joined(words, "or")
+}
+
+/// Words in backquotes, the last one after `joint`.
+pub(super) fn joined(words: &[impl AsRef<str>], joint: &str) -> String {
     let quoted: Vec<String> = words.iter().map(|word| format!("`{}`", word.as_ref())).collect();
     match quoted.split_last() {
         None => String::new(),
         Some((last, [])) => last.clone(),
-        Some((last, before)) => format!("{} or {last}", before.join(", ")),
+        Some((last, before)) => format!("{} {joint} {last}", before.join(", ")),
     }
+}
+
+/// What was typed in backquotes; `nothing` where no word stands.
+fn typed(text: &str) -> String {
+    if text.is_empty() { "nothing".to_owned() } else { format!("`{text}`") }
+}
+
+/// What the values of a composition come to: shares of mass or moles, or of the volume.
+fn sum_of(key: &str, sum: f64) -> String {
+    let sum = rounded(sum);
+    match key {
+        "concentrations" => format!("the species of `{key}` fill {sum} of the volume"),
+        _ => format!("the fractions of `{key}` add up to {sum}"),
+    }
+}
+
+/// A number as a message shows it: without the noise of its last digits.
+fn rounded(value: f64) -> f64 {
+    format!("{value:.8e}").parse().unwrap_or(value)
 }

@@ -321,7 +321,7 @@ impl<'a> Fields<'a> {
                     let what = format!("{}", self.block.path().child(&entry.key));
                     self.problem(SpecError::NotInThisVersion { at, what });
                 }
-                Some(_) => {}
+                Some(key) => self.block.reader().given(self.about.kind, key.name),
                 None if PROVENANCE.contains(&entry.key.as_str()) => {}
                 None if entry.bare => {
                     self.problem(SpecError::CommaEndedText { at, key: entry.key.clone() });

@@ -1,7 +1,7 @@
 //! What is gathered while a spec is read: mistakes, the resolved listing, and where the numbers come from.
 
 use std::cell::RefCell;
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use super::error::SpecError;
 use super::place::{KeyPath, Place};
@@ -61,6 +61,7 @@ pub struct Reader {
     resolved: RefCell<BTreeMap<Vec<Step>, ResolvedLine>>,
     provenance: RefCell<BTreeMap<Vec<Step>, Provenance>>,
     warnings: RefCell<Vec<ReadWarning>>,
+    keys: RefCell<BTreeSet<(&'static str, &'static str)>>,
     sources: BTreeMap<String, String>,
 }
 
@@ -82,6 +83,11 @@ impl Reader {
     /// Notes a warning.
     pub fn warn(&self, warning: ReadWarning) {
         self.warnings.borrow_mut().push(warning);
+    }
+
+    /// Notes that a key of a table was given.
+    pub(super) fn given(&self, table: &'static str, key: &'static str) {
+        self.keys.borrow_mut().insert((table, key));
     }
 
     /// Notes a resolved value.
@@ -119,6 +125,7 @@ impl Reader {
             resolved: self.resolved.into_inner().into_values().collect(),
             provenance: self.provenance.into_inner().into_values().collect(),
             warnings: self.warnings.into_inner(),
+            keys: self.keys.into_inner(),
         })
     }
 }
@@ -132,4 +139,6 @@ pub struct Gathered {
     pub provenance: Vec<Provenance>,
     /// What the reading warns of.
     pub warnings: Vec<ReadWarning>,
+    /// Which keys of which tables the spec gives: (kind of the table, key).
+    pub keys: BTreeSet<(&'static str, &'static str)>,
 }

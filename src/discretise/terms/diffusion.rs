@@ -54,10 +54,9 @@ fn common(layout: &Layout, state: &[f64], profile: &mut Profile, gradient: f64, 
 /// P J of every amount with unlike diffusivities.
 fn closed_on_mass(material: &Material, layout: &Layout, state: &[f64], profile: &mut Profile, gradient: f64, i: usize) {
     let n = material.n_components();
-    let closing = material.mixture.closing();
     let (inner, outer) = (&state[layout.tube(i)], &state[layout.tube(i + 1)]);
     let mobility = |k: usize| 0.5 * (profile.transport[i * n + k] + profile.transport[(i + 1) * n + k]);
-    let of_closing = mobility(closing);
+    let of_closing = mobility(n - 1); // the polymer; without one any component gives the same S
     let s: f64 = (0..layout.n_species)
         .map(|k| -(mobility(k) - of_closing) * material.molar_masses[k] * (outer[k] - inner[k]))
         .sum();

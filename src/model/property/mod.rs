@@ -110,7 +110,22 @@ impl Property {
             Form::Constant(_) | Form::Linear(_) | Form::Polynomial(_) | Form::Exponential(_) => None,
         };
         block.trace();
-        Ok(Self { form, range: read_range(block)?.or(of_table) })
+        let law = Self { form, range: read_range(block)?.or(of_table) };
+        law.check_positive(block, subject)?;
+        Ok(law)
+    }
+
+    /// A density, heat capacity or viscosity of 0 is a slip of the pen.
+    fn check_positive(&self, block: &Block<'_>, subject: Dimension) -> Result<(), Reported> {
+        let must = [Dimension::DENSITY, Dimension::HEAT_CAPACITY, Dimension::VISCOSITY].contains(&subject);
+        match &self.form {
+            Form::Constant(law) if must && law.value == 0.0 => {
+                let (at, key) = (block.place(), block.last_step().to_owned());
+                let text = units::write(0.0, subject);
+                Err(block.refuse(SpecError::OutOfBounds { at, key, text, bound: "above 0".to_owned() }))
+            }
+            _ => Ok(()),
+        }
     }
 
     /// The property in one stream tube.

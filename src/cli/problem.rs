@@ -1,0 +1,93 @@
+//! What goes wrong outside the specs, in one shape: said to the user, counted, and written into `--json`.
+
+use std::io;
+
+use serde_json::{Value as Json, json};
+
+use super::exit_code::ExitCode;
+use crate::integrate::error::NumericsError;
+use crate::units::{self, Dimension};
+
+/// Something that went wrong.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Problem {
+    /// The exit code it asks for.
+    pub code: ExitCode,
+    /// What is wrong.
+    pub message: String,
+    /// What to do instead.
+    pub help: Option<String>,
+    /// Further figures for `--json`.
+    more: Vec<(&'static str, Json)>,
+}
+
+impl Problem {
+    /// The command line is wrong.
+    #[must_use]
+    pub fn of_command(message: String, help: &str) -> Self {
+        Self { code: ExitCode::WrongInput, message, help: Some(help.to_owned()), more: Vec::new() }
+    }
+
+    /// Something outside refuses.
+    #[must_use]
+    pub fn of_outside(message: String, help: Option<&str>) -> Self {
+        Self { code: ExitCode::OutsideFailed, message, help: help.map(str::to_owned), more: Vec::new() }
+    }
+
+    /// A file cannot be read or written, in the words of the system.
+    #[must_use]
+    pub fn of_file(what: &str, name: &str, error: &io::Error) -> Self {
+        Self::of_outside(format!("cannot {what} `{name}`: {}", reason(error)), None)
+    }
+
+    /// The numerics failed.
+    #[must_use]
+    pub fn of_numerics(error: &NumericsError) -> Self {
+        let show = |value: f64, dimension| {
+            let (number, unit) = units::show(value, dimension, 5);
+            format!("{number} {unit}").trim_end().to_owned()
+        };
+        let (low, high) = error.temperatures;
+        let message = format!(
+            "the integration of section `{}` failed at z = {}: {} (last step {}, fluid from {} to {})",
+            error.section,
+            show(error.z, Dimension::LENGTH),
+            error.reason,
+            show(error.step, Dimension::LENGTH),
+            show(low, Dimension::TEMPERATURE),
+            show(high, Dimension::TEMPERATURE),
+        );
+        let more = vec![
+            ("section", json!(error.section)),
+            ("z_m", json!(error.z)),
+            ("step_m", json!(error.step)),
+            ("lowest_temperature_K", json!(low)),
+            ("highest_temperature_K", json!(high)),
+        ];
+        Self { code: ExitCode::NumericsFailed, message, help: Some(error.help().to_owned()), more }
+    }
+
+    /// The lines for a reader.
+    #[must_use]
+    pub fn draw(&self) -> String {
+        let help = self.help.as_ref().map(|help| format!("  help: {help}\n"));
+        format!("error: {}\n{}", self.message, help.unwrap_or_default())
+    }
+
+    /// The entry under `diagnostics`.
+    #[must_use]
+    pub fn to_json(&self) -> Json {
+        let mut entry = json!({ "message": self.message, "help": self.help });
+        if let Some(entry) = entry.as_object_mut() {
+            entry.extend(self.more.iter().map(|(key, value)| ((*key).to_owned(), value.clone())));
+        }
+        entry
+    }
+}
+
+/// What the system says, without the number that only some systems give.
+#[must_use]
+pub fn reason(error: &io::Error) -> String {
+    let text = error.to_string();
+    text.split(" (os error").next().unwrap_or_default().to_owned()
+}

@@ -1,0 +1,3 @@
+//! Files for other programs. Everything is returned as bytes; `cli/` writes them.
+
+pub mod csv;
