@@ -1,5 +1,7 @@
 //! axirad: laminar tubular reactors whose fluid changes as it reacts and heats up.
 
+#![deny(unsafe_code)]
+
 #[cfg(feature = "cli")]
 pub mod cli;
 pub mod discretise;

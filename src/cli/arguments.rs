@@ -50,8 +50,8 @@ pub struct Everywhere {
     /// All quantities and the work done as well
     #[arg(long, short, global = true)]
     pub verbose: bool,
-    /// Colour in messages
-    #[arg(long, global = true, value_enum, value_name = "WHEN", default_value_t)]
+    /// Colour in messages: auto, always or never
+    #[arg(long, global = true, value_enum, value_name = "WHEN", default_value_t, hide_possible_values = true)]
     pub color: Colour,
 }
 
@@ -86,7 +86,15 @@ pub struct Run {
     #[arg(long, value_name = "DIR")]
     pub out: Option<PathBuf>,
     /// What to write: csv is axial.csv, field.csv and quantities.csv; json is results.json
-    #[arg(long, value_enum, value_name = "KINDS", value_delimiter = ',', default_value = "csv", requires = "out")]
+    #[arg(
+        long,
+        value_enum,
+        value_name = "KINDS",
+        value_delimiter = ',',
+        default_value = "csv",
+        requires = "out",
+        hide_possible_values = true
+    )]
     pub write: Vec<Write>,
     /// Write over files that axirad did not write
     #[arg(long, requires = "out")]

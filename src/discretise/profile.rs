@@ -24,6 +24,8 @@ pub struct Profile {
     pub fluxes: Vec<f64>,
     /// ηᵢ, per stream tube [Pa·s].
     pub viscosities: Vec<f64>,
+    /// αᵢ, per stream tube; 0 without viscous heating [1/K].
+    pub expansions: Vec<f64>,
     /// AᵢΦᵢ, per stream tube; 0 without viscous heating [W/m].
     pub viscous_heat: Vec<f64>,
     /// ρ̄ g sin θ [Pa/m].
@@ -43,7 +45,6 @@ impl Profile {
             conductivity: 0.0,
             viscosity: 0.0,
             reaction_heat: 0.0,
-            expansion: 0.0,
         };
         let mobilities = if material.mixture.has_one_diffusivity() { 1 } else { material.n_components() };
         Self {
@@ -55,6 +56,7 @@ impl Profile {
             transport: vec![0.0; n * mobilities],
             fluxes: vec![0.0; layout.n_amounts],
             viscosities: vec![0.0; n],
+            expansions: vec![0.0; n],
             viscous_heat: vec![0.0; n],
             gravity_gradient: 0.0,
             wall: WallState::default(),

@@ -7,10 +7,11 @@ use super::flow::{from_viscosity, parabolic, plug};
 use super::grid::tube_flows;
 use super::layout::{Integral, Layout};
 use super::profile::Profile;
+use super::tubes::{self, TubeRoom};
 use super::terms::{Gains, conduction, diffusion, reaction, viscous_heating, wall_heat};
 use crate::model::STANDARD_GRAVITY;
 use crate::model::flow::Profile as Shape;
-use crate::model::local::{Material, Workspace};
+use crate::model::local::Material;
 use crate::model::plant::Plant;
 use crate::model::section::Section;
 
@@ -33,7 +34,7 @@ pub struct System<'p> {
 struct Room {
     profile: Profile,
     gains: Gains,
-    work: Workspace<f64>,
+    tubes: TubeRoom,
 }
 
 impl<'p> System<'p> {
@@ -44,7 +45,7 @@ impl<'p> System<'p> {
         let flows = tube_flows(&plant.numerics, plant.flow.profile, plant.feed.mass_flow);
         let gains = Gains { amounts: vec![0.0; layout.n_tubes * layout.n_amounts], heat: vec![0.0; layout.n_tubes] };
         let profile = Profile::new(&plant.material, &layout);
-        let room = RefCell::new(Room { profile, gains, work: plant.material.workspace() });
+        let room = RefCell::new(Room { profile, gains, tubes: TubeRoom::new(&plant.material) });
         Self { plant, section, layout, flows, room }
     }
 
@@ -65,8 +66,8 @@ impl<'p> System<'p> {
     /// | their slopes | `slopes` | per metre | `layout` |
     pub fn slopes(&self, state: &[f64], slopes: &mut [f64]) {
         let room = &mut *self.room.borrow_mut();
-        let Room { profile, gains, work } = room;
-        self.balance(state, profile, gains, work);
+        let Room { profile, gains, tubes } = room;
+        self.balance(state, profile, gains, tubes);
         self.divide(profile, gains, slopes);
         self.integrands(state, profile, slopes);
     }
@@ -75,23 +76,23 @@ impl<'p> System<'p> {
     #[must_use]
     pub fn profile(&self, state: &[f64]) -> Profile {
         let room = &mut *self.room.borrow_mut();
-        let Room { profile, gains, work } = room;
-        self.balance(state, profile, gains, work);
+        let Room { profile, gains, tubes } = room;
+        self.balance(state, profile, gains, tubes);
         profile.clone()
     }
 
     /// Runs `use_profile` on the cross-section of a state, without copying it.
     pub(super) fn with_profile<T>(&self, state: &[f64], use_profile: impl FnOnce(&Profile, &Gains) -> T) -> T {
         let room = &mut *self.room.borrow_mut();
-        let Room { profile, gains, work } = room;
-        self.balance(state, profile, gains, work);
+        let Room { profile, gains, tubes } = room;
+        self.balance(state, profile, gains, tubes);
         use_profile(profile, gains)
     }
 
     /// Everything at one z, and what each term brings to each tube.
-    fn balance(&self, state: &[f64], profile: &mut Profile, gains: &mut Gains, work: &mut Workspace<f64>) {
+    fn balance(&self, state: &[f64], profile: &mut Profile, gains: &mut Gains, tubes: &mut TubeRoom) {
         let tube = &self.section.duct.tube;
-        self.evaluate_tubes(state, profile, work);
+        self.evaluate_tubes(state, profile, tubes);
         self.solve_flow(state, profile);
         let gravity = profile.mean_density() * STANDARD_GRAVITY * self.section.duct.inclination.sin();
         profile.gravity_gradient = gravity;
@@ -109,21 +110,13 @@ impl<'p> System<'p> {
     }
 
     /// Properties and sources of every stream tube.
-    fn evaluate_tubes(&self, state: &[f64], profile: &mut Profile, work: &mut Workspace<f64>) {
+    fn evaluate_tubes(&self, state: &[f64], profile: &mut Profile, room: &mut TubeRoom) {
         let material = self.material();
-        let n_amounts = self.layout.n_amounts;
-        for i in 0..self.layout.n_tubes {
-            let tube = &state[self.layout.tube(i)];
-            let point = material.evaluate(tube, work);
-            profile.sources[i * n_amounts..(i + 1) * n_amounts].copy_from_slice(&work.sources);
-            profile.temperatures[i] = tube[n_amounts];
-            profile.volume_flows[i] = self.flows[i] / point.density;
-            profile.viscosities[i] = point.viscosity;
-            profile.points[i] = point;
-            let mobilities = profile.transport.len() / self.layout.n_tubes;
-            for k in 0..mobilities {
-                let diffusivity = material.mixture.diffusivity(k, tube[n_amounts]);
-                profile.transport[i * mobilities + k] = point.density * diffusivity;
+        tubes::evaluate(material, &self.layout, &self.flows, state, room, profile);
+        if self.plant.flow.viscous_heating {
+            let mut fractions = vec![0.0; material.n_components()];
+            for i in 0..self.layout.n_tubes {
+                profile.expansions[i] = material.expansion(&state[self.layout.tube(i)], &mut fractions);
             }
         }
     }

@@ -50,8 +50,6 @@ pub struct Point<N> {
     pub viscosity: N,
     /// −Σ ΔH rate [W/m³].
     pub reaction_heat: N,
-    /// α = −(1/ρ) ∂ρ/∂T at fixed composition [1/K].
-    pub expansion: N,
 }
 
 /// Room for the local evaluation of one stream tube.
@@ -116,6 +114,7 @@ impl Material {
 
     /// Room for the evaluation of one stream tube.
     #[must_use]
+    #[inline(always)]
     pub fn workspace<N: Number>(&self) -> Workspace<N> {
         let zero = N::constant(0.0);
         Workspace {
@@ -128,6 +127,7 @@ impl Material {
     /// Mass fractions of the components; the polymer is what the small species leave.
     ///
     /// w_k = M_k n_k, w_p = 1 − Σ_k w_k
+    #[inline(always)]
     pub fn fractions<N: Number>(&self, state: &[N], fractions: &mut [N]) {
         let mut rest = N::constant(1.0);
         for ((w, n), mass) in fractions.iter_mut().zip(state).zip(&self.molar_masses) {
@@ -142,6 +142,7 @@ impl Material {
     /// The weight-average molar mass in its smooth form, for viscosity laws [kg/mol].
     ///
     /// M_w = m0 (μ₂⁺ + 2e-6)/(μ₁⁺ + 1e-9)
+    #[inline(always)]
     fn smooth_molar_mass<N: Number>(&self, state: &[N]) -> N {
         match &self.chemistry.scheme {
             Scheme::None => N::constant(1.0),
@@ -155,9 +156,17 @@ impl Material {
     }
 
     /// What the viscosity law sees of a state whose mass fractions are known.
+    #[inline(always)]
     pub fn fluid<N: Number>(&self, state: &[N], fractions: &[N]) -> Fluid<N> {
         let polymer_fraction = if self.has_polymer() { fractions[self.n_species()] } else { N::constant(0.0) };
         Fluid { temperature: state[self.n_amounts()], polymer_fraction, molar_mass: self.smooth_molar_mass(state) }
+    }
+
+    /// α = −(1/ρ) ∂ρ/∂T of a stream tube at fixed composition [1/K].
+    pub fn expansion(&self, state: &[f64], fractions: &mut [f64]) -> f64 {
+        self.fractions(state, fractions);
+        let temperature = state[self.n_amounts()];
+        self.mixture.expansion(fractions, temperature, self.mixture.density(fractions, temperature))
     }
 
     /// Lifetime of a radical where radicals are quasi-steady, 1/(k_t λ₀ + T_r) [s].
@@ -199,6 +208,7 @@ impl Material {
     /// | n, μ, T | `state` | mol/kg, K | per unknown, one stream tube |
     /// | c = ρ n, R | `work` | mol/m³, mol/(m³ s) | per amount, one stream tube |
     /// | ρ, c_p, λ, η, heat | returned | SI | one stream tube |
+    #[inline(always)]
     pub fn evaluate<N: Number>(&self, state: &[N], work: &mut Workspace<N>) -> Point<N> {
         let temperature = state[self.n_amounts()];
         let inverse = temperature.at_least(COLDEST).recip();
@@ -225,7 +235,6 @@ impl Material {
             conductivity: self.mixture.conductivity(&work.fractions, temperature),
             viscosity: self.mixture.viscosity(&fluid),
             reaction_heat,
-            expansion: self.mixture.expansion(&work.fractions, temperature, density),
         }
     }
 }

@@ -122,6 +122,7 @@ impl Shared {
     }
 
     /// Σ over the groups of (mass fraction of the group) · f(law).
+    #[inline(always)]
     fn sum<N: Number>(&self, fractions: &[N], f: impl Fn(&Property) -> N) -> N {
         if let [(law, _)] = &self.groups[..] {
             return f(law); // mass fractions add up to 1
@@ -287,11 +288,13 @@ fn read_law(fields: &Fields<'_>, which: Which) -> Option<Property> {
 
 impl Mixture {
     /// ρ [kg/m³]; 1/ρ = Σ w_k/ρ_k.
+    #[inline(always)]
     pub fn density<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.density.sum(fractions, |law| law.at(temperature).at_least(LEAST).recip()).at_least(1e-9).recip()
     }
 
     /// α = −(1/ρ) ∂ρ/∂T at fixed composition [1/K]; α = ρ Σ w_k d(1/ρ_k)/dT.
+    #[inline(always)]
     pub fn expansion<N: Number>(&self, fractions: &[N], temperature: N, density: N) -> N {
         let slope = |law: &Property| law.at(Tangent::variable(temperature)).at_least(LEAST).recip().slope;
         self.density.sum(fractions, slope) * density
@@ -304,11 +307,13 @@ impl Mixture {
     }
 
     /// c_p [J/(kg K)]; c_p = Σ w_k c_p,k.
+    #[inline(always)]
     pub fn heat_capacity<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.heat_capacity.sum(fractions, |law| law.at(temperature)).at_least(LEAST)
     }
 
     /// c_p,k of one component [J/(kg K)].
+    #[inline(always)]
     pub fn component_heat_capacity<N: Number>(&self, component: usize, temperature: N) -> N {
         self.heat_capacity.of(component).at(temperature)
     }
@@ -338,6 +343,7 @@ impl Mixture {
     }
 
     /// λ [W/(m K)]; λ = Σ w_k λ_k.
+    #[inline(always)]
     pub fn conductivity<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.conductivity.sum(fractions, |law| law.at(temperature)).at_least(LEAST * LEAST)
     }
@@ -355,6 +361,7 @@ impl Mixture {
     }
 
     /// D of one component [m²/s].
+    #[inline(always)]
     pub fn diffusivity<N: Number>(&self, component: usize, temperature: N) -> N {
         match &self.diffusivity {
             Diffusivity::None => N::constant(0.0),
@@ -370,6 +377,7 @@ impl Mixture {
     }
 
     /// η at zero shear [Pa·s]; 1 where none was given, which nothing but a shape then uses.
+    #[inline(always)]
     pub fn viscosity<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.viscosity {
             Some(law) => law.zero_shear(fluid),

@@ -5,6 +5,7 @@ pub mod feed;
 pub mod flow;
 pub mod formula;
 pub mod kinetics;
+pub mod lane;
 pub mod limits;
 pub mod local;
 pub mod mixture;

@@ -329,6 +329,7 @@ mod tests {
     use approx::assert_relative_eq;
 
     /// A chain through every operation a law may use.
+    #[inline(always)]
     fn chain<N: Number>(x: N) -> N {
         let y = (x * x + 1.0).sqrt().recip() + (x * 0.3).exp() - x.power(5) * 0.01;
         let z = (y + 4.0).ln() / (x + 2.0) + (x + 1.5).real_power(0.37);

@@ -35,6 +35,7 @@ pub fn outline(spec: &Spec) -> String {
     .map(|(label, words)| (label.to_owned(), words))
     .collect();
     page.labelled(&items);
+    page.blank();
     page.table(&[Edge::Left, Edge::Right, Edge::Right, Edge::Left], &sections(plant));
     page.into_text()
 }

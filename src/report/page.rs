@@ -4,8 +4,10 @@
 pub const WIDTH: usize = 80;
 /// Blanks before what stands under a heading.
 const INDENT: usize = 2;
-/// Blanks between two columns of a table.
+/// Blanks between two columns of a table: wider than the one between a number and its unit.
 const GUTTER: usize = 3;
+/// Blanks between two columns where there is little room.
+pub const NARROW: usize = 2;
 /// A blank that is no place to break a line.
 const GLUE: char = '\u{a0}';
 
@@ -75,7 +77,7 @@ impl Page {
 
     /// Rows in aligned columns; an empty table leaves nothing.
     pub fn table(&mut self, edges: &[Edge], rows: &[Vec<String>]) {
-        aligned(edges, rows).iter().for_each(|line| self.line(line));
+        aligned(edges, rows, GUTTER).iter().for_each(|line| self.line(line));
     }
 
     /// A blank line, unless the page is empty or ends with one.
@@ -117,14 +119,14 @@ impl Page {
 ///
 /// A row may have fewer cells than there are columns.
 #[must_use]
-pub fn aligned(edges: &[Edge], rows: &[Vec<String>]) -> Vec<String> {
+pub fn aligned(edges: &[Edge], rows: &[Vec<String>], gutter: usize) -> Vec<String> {
     let width = |k: usize| rows.iter().filter_map(|row| row.get(k)).map(|cell| length(cell)).max();
     let widths: Vec<usize> = (0..edges.len()).map(|k| width(k).unwrap_or_default()).collect();
     let line = |row: &Vec<String>| {
         let mut line = " ".repeat(INDENT);
         for ((cell, edge), width) in row.iter().zip(edges).zip(&widths).filter(|(_, width)| **width > 0) {
             if length(&line) > INDENT {
-                line.push_str(&" ".repeat(GUTTER));
+                line.push_str(&" ".repeat(gutter));
             }
             let blanks = " ".repeat(width - length(cell));
             match edge {

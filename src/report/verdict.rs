@@ -1,16 +1,18 @@
 //! The verdict: what of `accept` holds, and how the run ended.
 
 use super::figures::{DIGITS, difference, parts, shown};
-use super::page::{Edge, Page, WIDTH, aligned, glued, length};
+use super::page::{Edge, NARROW, Page, WIDTH, aligned, glued, length};
 use crate::judge::accept::{Bar, Judged, Verdict};
 use crate::model::limits::Limits;
 use crate::results::Value;
 use crate::simulate::{Run, Spec};
 use crate::units::{self, Dimension};
 
+/// The column of a row that holds its reason.
+const REASON: usize = 5;
 const EDGES: [Edge; 6] = [Edge::Left, Edge::Left, Edge::Right, Edge::Left, Edge::Right, Edge::Left];
 
-/// The limits of `accept`, a line each; where that would be too wide, in words.
+/// The limits of `accept`, a line each: with the reason beside it, else below it; in words where both are too wide.
 pub fn accept(page: &mut Page, run: &Run) {
     if run.accept.is_empty() {
         page.heading("Limits of the design: none are asked for (`accept`)");
@@ -18,11 +20,19 @@ pub fn accept(page: &mut Page, run: &Run) {
     }
     page.heading(&format!("Limits of the design: {}", count(&run.accept)));
     let header = ["", "quantity", "value", "bound", "slack", "because"].map(str::to_owned).to_vec();
-    let mut rows = vec![header];
-    rows.extend(run.accept.iter().map(row));
-    let lines = aligned(&EDGES, &rows);
-    if lines.iter().all(|line| length(line) <= WIDTH) {
-        lines.iter().for_each(|line| page.line(line));
+    let rows: Vec<Vec<String>> = std::iter::once(header).chain(run.accept.iter().map(row)).collect();
+    let without_reasons: Vec<Vec<String>> = rows.iter().map(|row| row[..REASON].to_vec()).collect();
+    let fit = |lines: &[String]| lines.iter().all(|line| length(line) <= WIDTH);
+    let (whole, short) = (aligned(&EDGES, &rows, NARROW), aligned(&EDGES, &without_reasons, NARROW));
+    if fit(&whole) {
+        whole.iter().for_each(|line| page.line(line));
+    } else if fit(&short) {
+        for (k, (line, row)) in short.iter().zip(&rows).enumerate() {
+            page.line(line);
+            if k > 0 && !row[REASON].is_empty() {
+                page.remark(&row[REASON]);
+            }
+        }
     } else {
         let items = run.accept.iter().map(|judged| (verdict(judged).to_owned(), in_words(judged)));
         page.labelled(&items.collect::<Vec<(String, String)>>());
@@ -142,11 +152,19 @@ pub fn end(page: &mut Page, spec: &Spec, run: &Run) {
     page.paragraph(&format!(
         "`{limit}`{} was left in section `{}`, {} from the inlet: {share} % of the {} to the outlet. What lies beyond \
          was not computed; figures of the run cover it up to there.",
-        bound_of(&spec.plant.limits, limit).map(|bound| format!(" ({})", glued(&bound))).unwrap_or_default(),
+        bound_in_words(&spec.plant.limits, limit),
         run.end.section,
         place(run.end.z),
         place(length),
     ));
+}
+
+/// The value of a limit and what it holds for.
+fn bound_in_words(limits: &Limits, path: &str) -> String {
+    let Some(bound) = bound_of(limits, path) else { return String::new() };
+    // the figures below include the wall's surface, which may lie beyond
+    let everywhere = if path.starts_with("limits.pressure") { "" } else { " in any stream tube" };
+    format!(" ({}{everywhere})", glued(&bound))
 }
 
 /// The value of a limit by its path.

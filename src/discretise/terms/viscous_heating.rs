@@ -38,7 +38,7 @@ pub fn friction_heat(shape: Shape, tube: &Tube, profile: &Profile, i: usize) -> 
 /// Phenomena, 2nd ed., §11.2 (from memory).
 pub fn add(shape: Shape, tube: &Tube, pressure_gradient: f64, profile: &mut Profile, gains: &mut Gains) {
     for i in 0..profile.n_tubes() {
-        let work = profile.points[i].expansion * profile.temperatures[i] * profile.volume_flows[i] * pressure_gradient;
+        let work = profile.expansions[i] * profile.temperatures[i] * profile.volume_flows[i] * pressure_gradient;
         let heat = friction_heat(shape, tube, profile, i) - work;
         profile.viscous_heat[i] = heat;
         gains.heat[i] += heat;

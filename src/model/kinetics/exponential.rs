@@ -64,6 +64,7 @@ impl Exponential {
     /// | k | returned | the rate constant's | one stream tube |
     ///
     /// The exponent is held within ±`MAX_EXPONENT`.
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         let exponent = (temperature - self.at) * self.e_fold.recip();
         exponent.at_least(-MAX_EXPONENT).at_most(MAX_EXPONENT).exp() * self.value

@@ -147,6 +147,7 @@ impl FreeRadical {
     /// | w_p, w_M | `polymer_fraction`, `monomer_fraction` | 1 | one stream tube |
     ///
     /// `sources` receives the changes of the initiators, −k_d \[I\], and of the transfer agents later.
+    #[inline(always)]
     pub fn radicals<N: Number>(&self, local: &Local<'_, N>, sources: &mut [N]) -> Radicals<N> {
         let (temperature, inverse) = (local.temperature, local.inverse);
         let share = self.share(local);
@@ -196,6 +197,7 @@ impl FreeRadical {
     /// | --- | --- | --- | --- |
     /// | changes | added to `sources`, the three moments last | mol/(m³ s) | per amount, one stream tube |
     /// | −d[M]/dt | returned | mol/(m³ s) | one stream tube |
+    #[inline(always)]
     pub fn changes<N: Number>(&self, local: &Local<'_, N>, sources: &mut [N]) -> N {
         let r = self.radicals(local, sources);
         let starts = r.initiation + r.transfer * r.live;
@@ -212,6 +214,7 @@ impl FreeRadical {
     }
 
     /// x = w_p/(w_p + w_M), the share of polymer, smooth where both are near 0.
+    #[inline(always)]
     fn share<N: Number>(&self, local: &Local<'_, N>) -> N {
         /// Mass fraction below which the share is no longer told from 0.
         const LEAST: f64 = 1e-12;
@@ -220,12 +223,14 @@ impl FreeRadical {
     }
 
     /// φ = [M]²/([M]² + ε²), 0 for [M] ≤ 0: initiation ends with the monomer.
+    #[inline(always)]
     fn phi<N: Number>(&self, monomer: N) -> N {
         let square = monomer * monomer;
         monomer.select(square / (square + self.monomer_epsilon * self.monomer_epsilon), N::constant(0.0))
     }
 
     /// [M]^m; for an m that is not whole, smooth and odd through 0.
+    #[inline(always)]
     fn monomer_power<N: Number>(&self, monomer: N, order: f64) -> N {
         if order.fract() == 0.0 && order <= 9.0 {
             #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "a whole number from 1 to 9")]
@@ -236,6 +241,7 @@ impl FreeRadical {
     }
 
     /// k_t with its gel effect, and k_tc/k_t.
+    #[inline(always)]
     fn termination<N: Number>(&self, temperature: N, inverse: N, share: N) -> (N, N) {
         let gel = self.gel_termination.factor(temperature, share);
         match &self.termination {

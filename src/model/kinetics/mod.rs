@@ -73,6 +73,7 @@ impl Chemistry {
     /// | c, T, 1/T, w_p, w_M | `local` | mol/m³, K, 1/K, 1 | one stream tube |
     /// | R_k | `sources`, set | mol/(m³ s) | per amount, one stream tube |
     /// | −Σ ΔH rate | returned | W/m³ | one stream tube |
+    #[inline(always)]
     pub fn changes<N: Number>(&self, local: &Local<'_, N>, sources: &mut [N]) -> N {
         sources.fill(N::constant(0.0));
         let mut heat = N::constant(0.0);

@@ -49,6 +49,7 @@ impl RateConstant {
     /// | T | `temperature` | K | one stream tube |
     /// | 1/T | `inverse` | 1/K | one stream tube |
     /// | k | returned | (m³/mol)^(order − 1)/s | one stream tube |
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N, inverse: N) -> N {
         match &self.form {
             Form::Constant(law) => N::constant(law.value),

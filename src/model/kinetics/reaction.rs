@@ -176,6 +176,7 @@ impl Factor {
         Some(Self { species, power })
     }
 
+    #[inline(always)]
     fn of<N: Number>(&self, concentrations: &[N], epsilon: f64) -> N {
         let c = concentrations[self.species];
         match self.power {
@@ -185,6 +186,7 @@ impl Factor {
     }
 }
 
+#[inline(always)]
 fn product<N: Number>(factors: &[Factor], concentrations: &[N], epsilon: f64) -> Option<N> {
     let mut factors = factors.iter().map(|factor| factor.of(concentrations, epsilon));
     let first = factors.next()?;
@@ -267,6 +269,7 @@ impl Reaction {
     ///
     /// Slightly below zero a whole power keeps its sign rule; any other is c (c² + ε²)^((a−1)/2), smooth and
     /// odd, so that a reaction of order 0 stops where its reactant is gone.
+    #[inline(always)]
     pub fn rate<N: Number>(&self, concentrations: &[N], temperature: N, inverse: N, epsilon: f64) -> N {
         let k = self.rate_constant.at(temperature, inverse);
         let forward = match product(&self.forward, concentrations, epsilon) {

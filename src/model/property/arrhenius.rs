@@ -123,11 +123,13 @@ impl Arrhenius {
     ///
     /// The temperature is held above `COLDEST` and the exponent within ±`MAX_EXPONENT`, so that every trial
     /// state gets a finite value.
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         self.at_inverse(temperature.at_least(COLDEST).recip())
     }
 
     /// The same, with 1/T at hand.
+    #[inline(always)]
     pub fn at_inverse<N: Number>(&self, inverse: N) -> N {
         let exponent = (inverse - self.inverse) * -self.activation_temperature;
         exponent.at_least(-MAX_EXPONENT).at_most(MAX_EXPONENT).exp() * self.value

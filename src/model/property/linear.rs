@@ -63,11 +63,13 @@ impl Linear {
     /// | y | returned | the property's | one stream tube |
     ///
     /// It may leave the positive numbers far from `at`; the mixture holds it above a floor.
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         (temperature - self.at) * self.slope + self.value
     }
 
     /// ∫ y dT from one temperature to another.
+    #[inline(always)]
     pub fn integral<N: Number>(&self, from: f64, to: N) -> N {
         let middle = (to + from) * 0.5;
         (to - from) * self.at(middle)

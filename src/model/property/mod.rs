@@ -134,6 +134,7 @@ impl Property {
     /// | --- | --- | --- | --- |
     /// | T | `temperature` | K | one stream tube |
     /// | y | returned | the property's | one stream tube |
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         match &self.form {
             Form::Constant(law) => N::constant(law.value),
@@ -145,6 +146,7 @@ impl Property {
     }
 
     /// ∫ y dT from one temperature to another, in the property's unit times K.
+    #[inline(always)]
     pub fn integral<N: Number>(&self, from: f64, to: N) -> N {
         match &self.form {
             Form::Constant(law) => (to - from) * law.value,
@@ -179,6 +181,7 @@ const GAUSS: [(f64, f64); 5] = [
 ];
 
 /// ∫ y dT where there is no closed form. Smooth laws over a few hundred kelvin: good to 1e-10.
+#[inline(always)]
 fn quadrature<N: Number>(law: impl Fn(N) -> N, from: f64, to: N) -> N {
     let half = (to - from) * 0.5;
     let middle = (to + from) * 0.5;

@@ -65,12 +65,14 @@ impl Polynomial {
     /// | y | returned | the property's | one stream tube |
     ///
     /// It may leave the positive numbers outside its range; the mixture holds it above a floor.
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         let above = temperature - self.at;
         self.a.iter().rev().fold(N::constant(0.0), |sum, a| sum * above + *a)
     }
 
     /// ∫ y dT from one temperature to another.
+    #[inline(always)]
     pub fn integral<N: Number>(&self, from: f64, to: N) -> N {
         let primitive = |above: N| {
             let n = self.a.len();

@@ -92,6 +92,7 @@ impl Table {
     ///
     /// Each interval adds its rise up to T, so that no branch on T is needed; outside the points the first
     /// or last value is held.
+    #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
         let rise = |sum: N, piece: &Piece| {
             let s = temperature.at_least(piece.start).at_most(piece.end) - piece.start;
@@ -101,11 +102,13 @@ impl Table {
     }
 
     /// ∫ y dT from one temperature to another.
+    #[inline(always)]
     pub fn integral<N: Number>(&self, from: f64, to: N) -> N {
         self.primitive(to) - self.primitive(N::constant(from))
     }
 
     /// ∫ y dT from the first point.
+    #[inline(always)]
     fn primitive<N: Number>(&self, to: N) -> N {
         let (first, last) = self.range();
         let before = (to.at_most(first) - first) * self.first;

@@ -87,6 +87,7 @@ impl Viscosity {
     }
 
     /// Zero-shear viscosity in one stream tube [Pa·s].
+    #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.form {
             Form::Plain(law) => law.at(fluid.temperature),

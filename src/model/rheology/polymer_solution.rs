@@ -127,6 +127,7 @@ impl PolymerSolution {
     /// | η | returned | Pa·s | one stream tube |
     ///
     /// The exponent is held within ±`MAX_EXPONENT`.
+    #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
         let inverse = fluid.temperature.at_least(COLDEST).recip();
         let base = match &self.base {

@@ -73,6 +73,7 @@ impl VogelFulcherTammann {
     /// | η | returned | Pa·s | one stream tube |
     ///
     /// Near and below T₀ the exponent is held at `MAX_EXPONENT`: every trial state gets a finite value.
+    #[inline(always)]
     pub fn zero_shear<N: Number>(&self, temperature: N) -> N {
         let above = (temperature - self.t_0).at_least(self.b / MAX_EXPONENT);
         (above.recip() * self.b).exp() * self.eta_inf

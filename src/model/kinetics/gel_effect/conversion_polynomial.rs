@@ -72,6 +72,7 @@ impl ConversionPolynomial {
     /// | factor | returned | 1 | one stream tube |
     ///
     /// The exponent is held within ±`MAX_EXPONENT`.
+    #[inline(always)]
     pub fn factor<N: Number>(&self, temperature: N, share: N) -> N {
         let term = |sum: N, (a, b): &(f64, f64)| sum * share + (temperature * *b + *a);
         let sum = self.terms.iter().rev().fold(N::constant(0.0), term);

@@ -30,6 +30,7 @@ impl GelEffect {
     }
 
     /// The factor in one stream tube; temperature [K], share of polymer in monomer plus polymer.
+    #[inline(always)]
     pub fn factor<N: Number>(&self, temperature: N, share: N) -> N {
         match self {
             Self::None => N::constant(1.0),
