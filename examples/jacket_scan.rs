@@ -15,7 +15,7 @@ pub fn main() -> Result<(), Box<dyn Error>> {
     let name = "specs/cases/case_c.yaml";
     let bytes = std::fs::read(name)?;
     println!("{:>12} {:>12} {:>14} {:>16}", "jacket", "conversion", "hot spot", "pressure drop");
-    for jacket in [90, 100, 110, 120] {
+    for jacket in [100, 105, 110, 115, 120] {
         let set = format!("sections.tube.wall.coolant.temperature={jacket} degC");
         let mut part = |path: &str| std::fs::read(path).map_err(|error| error.to_string());
         let spec = read_spec(name, &bytes, &mut part, &[set]).map_err(|errors| errors[0].to_string())?;

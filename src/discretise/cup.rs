@@ -11,26 +11,26 @@ const CONVERGED: f64 = 1e-15;
 /// The mixing cup at one z.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CupState {
-    /// n, μ, T [mol/kg, K].
+    /// n, μ, T in mol/kg, K.
     pub state: Vec<f64>,
     /// w of each component, the polymer last.
     pub fractions: Vec<f64>,
 }
 
 impl CupState {
-    /// T [K].
+    /// T \[K\].
     #[must_use]
     pub fn temperature(&self) -> f64 {
         self.state[self.state.len() - 1]
     }
 
-    /// ρ [kg/m³].
+    /// ρ in kg/m³.
     #[must_use]
     pub fn density(&self, material: &Material) -> f64 {
         material.mixture.density(&self.fractions, self.temperature())
     }
 
-    /// η at zero shear [Pa·s].
+    /// η at zero shear in Pa·s.
     #[must_use]
     pub fn viscosity(&self, material: &Material) -> f64 {
         material.mixture.viscosity(&material.fluid(&self.state, &self.fractions))
@@ -65,7 +65,7 @@ pub fn cup_state(material: &Material, layout: &Layout, flows: &[f64], state: &[f
     CupState { state: cup, fractions }
 }
 
-/// Σ ṁᵢ h(Tᵢ, nᵢ), counted from a reference [W].
+/// Σ ṁᵢ h(Tᵢ, nᵢ), counted from a reference \[W\].
 #[must_use]
 pub fn enthalpy_flow(material: &Material, layout: &Layout, flows: &[f64], state: &[f64], reference: f64) -> f64 {
     let mut fractions = vec![0.0; material.n_components()];
@@ -77,7 +77,7 @@ pub fn enthalpy_flow(material: &Material, layout: &Layout, flows: &[f64], state:
     flows.iter().enumerate().map(|(i, flow)| flow * of_tube(i)).sum()
 }
 
-/// The temperature at which a composition has an enthalpy, by Newton [K].
+/// The temperature at which a composition has an enthalpy, by Newton \[K\].
 fn temperature_at(material: &Material, fractions: &[f64], enthalpy: f64, first: f64) -> f64 {
     let mut temperature = first;
     for _ in 0..MOST_STEPS {

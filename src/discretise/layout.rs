@@ -10,18 +10,18 @@ use crate::model::local::Material;
 /// An integral along z that is carried with the state.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Integral {
-    /// ∫ G dz, pressure lost to friction [Pa].
+    /// ∫ G dz, pressure lost to friction in Pa.
     Friction,
-    /// ∫ ρ̄ g sin θ dz, pressure lost to height [Pa].
+    /// ∫ ρ̄ g sin θ dz, pressure lost to height in Pa.
     Gravity,
-    /// ∫ P_w q_w dz, heat out of the fluid through the wall [W].
+    /// ∫ P_w q_w dz, heat out of the fluid through the wall \[W\].
     WallHeat,
-    /// ∫ Σ A (−ΔH rate) dz, heat set free by reactions [W].
+    /// ∫ Σ A (−ΔH rate) dz, heat set free by reactions \[W\].
     ReactionHeat,
-    /// ∫ Σ A Φ dz, heat of shear and pressure work [W].
+    /// ∫ Σ A Φ dz, heat of shear and pressure work \[W\].
     ViscousHeat,
     /// ∫ Σ A Σ_k R_k M_k (h_k(T) − h_k(T_feed)) dz: what a constant ΔH leaves open where heat capacities
-    /// are unlike [W].
+    /// are unlike \[W\].
     HeatCapacityGap,
 }
 

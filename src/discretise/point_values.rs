@@ -8,17 +8,17 @@ use super::spline::Spline;
 pub struct Peak {
     /// The largest value.
     pub value: f64,
-    /// r [m].
+    /// r in m.
     pub r: f64,
 }
 
 impl Profile {
-    /// ⟨r²⟩ of every stream tube [m²].
+    /// ⟨r²⟩ of every stream tube in m².
     fn mean_squares(&self) -> Vec<f64> {
         (0..self.n_tubes()).map(|i| self.geometry.mean_square(i)).collect()
     }
 
-    /// R² [m²].
+    /// R² in m².
     fn wall_square(&self) -> f64 {
         self.geometry.squares[self.n_tubes()]
     }
@@ -32,7 +32,7 @@ impl Profile {
         Spline::through(squares, values)
     }
 
-    /// T at r/R [K].
+    /// T at r/R \[K\].
     #[must_use]
     pub fn temperature_at(&self, position: f64) -> f64 {
         self.temperature_spline().at(position * position * self.wall_square())
@@ -45,7 +45,7 @@ impl Profile {
         Peak { value, r: square.max(0.0).sqrt() }
     }
 
-    /// The least temperature of the cross-section, wall surface included [K].
+    /// The least temperature of the cross-section, wall surface included \[K\].
     #[must_use]
     pub fn lowest_temperature(&self) -> f64 {
         self.temperatures.iter().copied().fold(self.wall.temperature, f64::min)

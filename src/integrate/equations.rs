@@ -85,32 +85,10 @@ impl NonLinearOpJacobian for Equations<'_, '_> {
     }
 }
 
-/// The inlet as diffsol's initial state.
-#[derive(Debug)]
-pub struct Inlet<'a, 's, 'p>(&'a Equations<'s, 'p>);
-
-impl Op for Inlet<'_, '_, '_> {
-    type T = f64;
-    type V = V;
-    type M = BlockTridiagonal;
-    type C = NalgebraContext;
-    fn context(&self) -> &NalgebraContext {
-        &self.0.context
-    }
-    fn nstates(&self) -> usize {
-        self.0.inlet.len()
-    }
-    fn nout(&self) -> usize {
-        self.0.inlet.len()
-    }
-    fn nparams(&self) -> usize {
-        0
-    }
-}
-
-impl ConstantOp for Inlet<'_, '_, '_> {
+impl ConstantOp for Equations<'_, '_> {
+    /// The inlet.
     fn call_inplace(&self, _z: f64, state: &mut V) {
-        state.batch_as_mut_slice(0).copy_from_slice(&self.0.inlet);
+        state.batch_as_mut_slice(0).copy_from_slice(&self.inlet);
     }
 }
 
@@ -148,7 +126,7 @@ impl NonLinearOp for Limits<'_, '_, '_> {
 
 impl<'a> OdeEquationsRef<'a> for Equations<'_, '_> {
     type Rhs = &'a Self;
-    type Init = Inlet<'a, 'a, 'a>;
+    type Init = &'a Self;
     type Root = Limits<'a, 'a, 'a>;
     type Mass = Unit<'a>;
     type Out = Unit<'a>;
@@ -162,8 +140,8 @@ impl OdeEquations for Equations<'_, '_> {
     fn mass(&self) -> Option<Unit<'_>> {
         None
     }
-    fn init(&self) -> Inlet<'_, '_, '_> {
-        Inlet(self)
+    fn init(&self) -> &Self {
+        self
     }
     fn root(&self) -> Option<Limits<'_, '_, '_>> {
         Some(Limits(self))

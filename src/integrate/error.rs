@@ -6,11 +6,11 @@
 pub struct NumericsError {
     /// The section.
     pub section: String,
-    /// z from the inlet [m].
+    /// z from the inlet in m.
     pub z: f64,
-    /// The last step tried [m].
+    /// The last step tried in m.
     pub step: f64,
-    /// Lowest and highest temperature of the stream tubes there [K].
+    /// Lowest and highest temperature of the stream tubes there \[K\].
     pub temperatures: (f64, f64),
     /// What the integrator says.
     pub reason: String,

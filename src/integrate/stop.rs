@@ -10,13 +10,13 @@ const LEAST_POLYMER: f64 = 1e-9;
 /// A limit that a run may leave.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Limit {
-    /// T of any stream tube below [K].
+    /// T of any stream tube below \[K\].
     LowestTemperature(f64),
-    /// T of any stream tube above [K].
+    /// T of any stream tube above \[K\].
     HighestTemperature(f64),
-    /// p below; the pressure at the section's inlet and the bound [Pa].
+    /// p below; the pressure at the section's inlet and the bound in Pa.
     LowestPressure { at_inlet: f64, lowest: f64 },
-    /// η of any stream tube above [Pa·s].
+    /// η of any stream tube above in Pa·s.
     HighestViscosity(f64),
     /// w_p of any stream tube above.
     HighestPolymerFraction(f64),

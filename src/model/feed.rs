@@ -103,11 +103,11 @@ pub const POLYMER: About = About {
 /// How much flows.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Amount {
-    /// [kg/s].
+    /// in kg/s.
     MassFlow(f64),
-    /// [m³/s].
+    /// in m³/s.
     VolumeFlow(f64),
-    /// [m/s].
+    /// in m/s.
     MeanVelocity(f64),
 }
 
@@ -118,14 +118,14 @@ pub enum Basis {
     Mass,
     /// Mole fractions.
     Mole,
-    /// Concentrations [mol/m³].
+    /// Concentrations in mol/m³.
     Concentration,
 }
 
 /// The polymer of a stream.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct FedPolymer {
-    /// M_n [kg/mol].
+    /// M_n in kg/mol.
     pub number_average_molar_mass: f64,
     /// M_w/M_n.
     pub dispersity: f64,
@@ -136,9 +136,9 @@ pub struct FedPolymer {
 pub struct Stream {
     /// How much flows.
     pub amount: Amount,
-    /// T [K].
+    /// T \[K\].
     pub temperature: f64,
-    /// p at the inlet [Pa], if given.
+    /// p at the inlet in Pa, if given.
     pub pressure: Option<f64>,
     /// How the composition is counted.
     pub basis: Basis,

@@ -87,13 +87,13 @@ bound_block!(
 /// Limits of a run, SI. An infinite one is none.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Limits {
-    /// Lowest temperature of any stream tube [K].
+    /// Lowest temperature of any stream tube \[K\].
     pub lowest_temperature: f64,
-    /// Highest temperature of any stream tube [K].
+    /// Highest temperature of any stream tube \[K\].
     pub highest_temperature: f64,
-    /// Lowest pressure, if the feed's is given [Pa].
+    /// Lowest pressure, if the feed's is given in Pa.
     pub lowest_pressure: f64,
-    /// Highest zero-shear viscosity [Pa·s].
+    /// Highest zero-shear viscosity in Pa·s.
     pub highest_viscosity: f64,
     /// Highest mass fraction of polymer.
     pub highest_polymer_fraction: f64,

@@ -19,7 +19,7 @@ pub mod section;
 pub mod species;
 pub mod wall;
 
-/// R_g [J/(mol K)], exact since the SI of 2019: CODATA 2018.
+/// R_g in J/(mol K), exact since the SI of 2019: CODATA 2018.
 pub const GAS_CONSTANT: f64 = 8.314_462_618;
 
 /// g_n, standard acceleration of gravity [m/s²]: 3rd CGPM (1901), exact.

@@ -109,16 +109,16 @@ pub struct Plant {
 /// The stream that enters, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Feed {
-    /// ṁ [kg/s].
+    /// ṁ in kg/s.
     pub mass_flow: f64,
-    /// n_k, moments, T: the state of every stream tube at the inlet [mol/kg, K].
+    /// n_k, moments, T: the state of every stream tube at the inlet in mol/kg, K.
     pub state: Vec<f64>,
-    /// p [Pa], if given.
+    /// p in Pa, if given.
     pub pressure: Option<f64>,
 }
 
 impl Feed {
-    /// T [K].
+    /// T \[K\].
     #[must_use]
     pub fn temperature(&self) -> f64 {
         self.state[self.state.len() - 1]
@@ -185,7 +185,7 @@ impl Plant {
         Ok(Self { material, feed, flow, sections, limits, numerics, output })
     }
 
-    /// L, the whole length [m].
+    /// L, the whole length in m.
     #[must_use]
     pub fn length(&self) -> f64 {
         self.sections.iter().map(|section| section.length).sum()
@@ -208,9 +208,11 @@ impl Parts<'_> {
         let mut there: Vec<bool> = (0..n).map(|k| self.stream.has(k)).collect();
         loop {
             let before = there.clone();
-            for reaction in self.reactions.iter().filter(|reaction| reaction.needs().all(|k| before[k])) {
+            for reaction in &self.reactions {
+                let forward = reaction.needs().all(|k| before[k]);
+                let backward = reaction.reverse_needs().is_some_and(|mut needs| needs.all(|k| before[k]));
                 for (k, amount) in &reaction.stoichiometry {
-                    there[*k] |= *amount > 0.0;
+                    there[*k] |= (forward && *amount > 0.0) || (backward && *amount < 0.0);
                 }
             }
             if before == there {
@@ -232,7 +234,7 @@ impl Parts<'_> {
                 fields.problem(SpecError::Needs { at, key, needs });
                 return Err(Reported);
             }
-            Scheme::FreeRadical(scheme) => Scheme::FreeRadical(scheme.renumbered(new)),
+            Scheme::FreeRadical(scheme) => Scheme::FreeRadical(Box::new(scheme.renumbered(new))),
             Scheme::None => Scheme::None,
         };
         let reactions: Vec<Reaction> = self
@@ -370,7 +372,7 @@ fn free_volume(material: &Material, masses: &[f64], temperature: f64) -> f64 {
     1.0 - masses.iter().enumerate().map(taken).sum::<f64>()
 }
 
-/// Mass per volume of the species that takes the rest [kg/m³].
+/// Mass per volume of the species that takes the rest in kg/m³.
 fn missing_mass(
     fields: &Fields<'_>,
     material: &Material,

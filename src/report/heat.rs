@@ -118,12 +118,11 @@ fn wall(run: &Run) -> Vec<(&'static str, String)> {
     items
 }
 
-/// What the balances leave open.
+/// What the balances leave open, relative.
 pub fn balances(page: &mut Page, run: &Run) {
-    page.heading("Balances, what is left open");
-    let said = |(name, label): (&str, &str)| Some(glued(&format!("{label} {}", of_run(run, name)?)));
-    let all: Vec<String> = BALANCES.into_iter().filter_map(said).collect();
-    page.paragraph(&format!("{}; relative, energy over its largest term.", all.join(", ")));
+    page.heading("What the balances leave open, relative");
+    let item = |(name, label): (&str, &str)| Some((label.to_owned(), of_run(run, name)?));
+    page.labelled(&BALANCES.into_iter().filter_map(item).collect::<Vec<(String, String)>>());
 }
 
 /// Whether reactions set heat free anywhere in the run.

@@ -134,10 +134,9 @@ fn table_without_empty_columns(page: &mut Page, rows: Vec<Vec<String>>) {
 /// Every quantity of the run, with the reason where one is missing.
 pub fn all_quantities(page: &mut Page, run: &Run) {
     page.heading("All quantities");
-    let row = |figure: &Figure| match &figure.value {
-        Value::Missing(reason) => vec![figure.name.clone(), format!("- ({reason})")],
-        Value::Number(_) | Value::Word(_) => vec![figure.name.clone(), cell(Some(figure))],
+    let item = |figure: &Figure| match &figure.value {
+        Value::Missing(reason) => (figure.name.clone(), format!("- ({reason})")),
+        Value::Number(_) | Value::Word(_) => (figure.name.clone(), cell(Some(figure))),
     };
-    let rows: Vec<Vec<String>> = run.figures.iter().map(row).collect();
-    page.table(&[Edge::Left, Edge::Left], &rows);
+    page.labelled(&run.figures.iter().map(item).collect::<Vec<(String, String)>>());
 }

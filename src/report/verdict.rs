@@ -30,7 +30,7 @@ pub fn accept(page: &mut Page, run: &Run) {
         for (k, (line, row)) in short.iter().zip(&rows).enumerate() {
             page.line(line);
             if k > 0 && !row[REASON].is_empty() {
-                page.remark(&row[REASON]);
+                page.remark(&format!("because: {}", row[REASON]));
             }
         }
     } else {
@@ -89,10 +89,10 @@ fn verdict(judged: &Judged) -> &'static str {
     }
 }
 
-/// The same as a row in a sentence: `hot_spot.temperature: 133 degC, at most 160 degC, slack 27 K; colour`.
+/// The same as a row in a sentence: `hot_spot.temperature: 133 degC, at most 160 degC, slack 27 K; because: colour`.
 fn in_words(judged: &Judged) -> String {
     let slack = slack(judged).map(|slack| format!(", slack {}", glued(&slack)));
-    let because = judged.limit.because.as_ref().map(|because| format!("; {because}"));
+    let because = judged.limit.because.as_ref().map(|because| format!("; because: {because}"));
     format!(
         "{}: {}, {}{}{}",
         judged.limit.quantity,
@@ -126,6 +126,9 @@ pub fn bound(judged: &Judged) -> String {
 
 /// How far inside its bound a quantity is, negative beyond it; shares differ by points of a per cent.
 fn slack(judged: &Judged) -> Option<String> {
+    if matches!(judged.verdict, Verdict::NotJudged(_)) {
+        return None;
+    }
     let value = judged.value.number()?;
     let slack = match &judged.limit.bound {
         Bar::AtLeast(bound) => value - bound,

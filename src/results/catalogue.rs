@@ -25,6 +25,9 @@ pub struct Quantity {
     pub at: At,
 }
 
+/// A value of one stream tube: tube, species.
+pub type Local = fn(&StationView<'_>, usize, usize) -> Option<f64>;
+
 /// What a quantity belongs to, and how it is computed.
 #[derive(Debug)]
 pub enum At {
@@ -33,7 +36,7 @@ pub enum At {
         /// Of the mixing cup or the cross-section; the number of a species where the name asks for one.
         cup: fn(&StationView<'_>, usize) -> Value,
         /// Of one stream tube, where it is local: tube, species.
-        local: Option<fn(&StationView<'_>, usize, usize) -> Option<f64>>,
+        local: Option<Local>,
         /// Whether `….percentile_10`, `_50`, `_90` exist.
         spread: bool,
     },

@@ -1,13 +1,10 @@
 //! Quantities of a place: the mixing cup, the cross-section, the wall (spec page, §8; model page, §7).
 
-use super::catalogue::{At, Quantity};
+use super::catalogue::{At, Local, Quantity};
 use super::figure::Value;
 use super::spread::percentile;
 use super::view::{LEAST_POLYMER, NO_VISCOSITY, StationView};
 use crate::units::Dimension;
-
-/// A value of one stream tube.
-type Local = fn(&StationView<'_>, usize, usize) -> Option<f64>;
 
 const NO_REACTANT: &str = "no reactant is named and nothing is consumed";
 const NOT_FED: &str = "the species is not fed";
@@ -230,13 +227,13 @@ fn local_conversion(station: &StationView<'_>, i: usize, _: usize) -> Option<f64
     station.conversion(station.material().conversion_of?, station.tube(i))
 }
 
-/// M_n = m0 μ₁/μ₀ [kg/mol].
+/// M_n = m0 μ₁/μ₀ in kg/mol.
 fn number_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
     let moments = station.moments(amounts)?;
     Some(station.material().unit_mass() * moments[1] / moments[0])
 }
 
-/// M_w = m0 μ₂/μ₁ [kg/mol].
+/// M_w = m0 μ₂/μ₁ in kg/mol.
 fn weight_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
     let moments = station.moments(amounts)?;
     Some(station.material().unit_mass() * moments[2] / moments[1])

@@ -1,6 +1,6 @@
 //! The spec as typed: located values, parts and edits, and the unit-aware reader that blocks and laws use.
 //!
-//! Data moves down this list: [`document`] makes a tree from a text, [`include`] joins parts, [`edit`] sets
+//! Data moves down this list: [`document`] makes a tree from a text, [`mod@include`] joins parts, [`edit`] sets
 //! values by path, [`like`] copies what is alike, [`fields`] and [`block`] read keys by the table of
 //! [`about`]. No law is known here.
 

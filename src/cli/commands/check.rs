@@ -17,8 +17,8 @@ use crate::spec::suggest::nearest;
 use crate::spec::{KeyPath, Need, Node, Place, ResolvedLine, SpecError};
 
 /// What a part is held against, and what only a spec can tell.
-const OF_A_PART: &str = "its text, its structure and its blocks were checked; its values are read when a spec \
-                         includes it";
+const OF_A_PART: &str = "checked: its text, what it includes, and the names of its blocks; what stands in them is read \
+                         when a spec includes it";
 
 /// Checks each file; what is wrong with one does not keep the others from being checked.
 pub fn check(arguments: &Arguments, everywhere: Everywhere, console: &mut Console<'_>) -> ExitCode {

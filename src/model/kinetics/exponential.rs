@@ -34,11 +34,11 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Exponential {
-    /// k at `at` [the rate constant's unit].
+    /// k at `at` in the rate constant's unit.
     value: f64,
-    /// Temperature that the value belongs to [K].
+    /// Temperature that the value belongs to \[K\].
     at: f64,
-    /// Rise that multiplies k by e [K].
+    /// Rise that multiplies k by e \[K\].
     e_fold: f64,
 }
 

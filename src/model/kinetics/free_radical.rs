@@ -1,14 +1,14 @@
 //! Free-radical polymerization with quasi-steady radicals, by the method of moments (model page, §6).
 //!
 //! Conventions, since factors of 2 are where such models go wrong: each initiation event counts two bound
-//! units through R_I = 2 f k_d [I] + 2 k_th [M]^m; termination consumes radicals at k_t λ₀²; every new chain
-//! starts with one bound unit, so that [M] + μ₁ is conserved.
+//! units through R_I = 2 f k_d \[I\] + 2 k_th \[M\]^m; termination consumes radicals at k_t λ₀²; every new chain
+//! starts with one bound unit, so that \[M\] + μ₁ is conserved.
 
 use super::gel_effect::GelEffect;
 use super::rate_constant::RateConstant;
 use crate::model::number::Number;
 
-/// δ of the smooth positive part of R_I, far below any rate that matters [mol/(m³ s)].
+/// δ of the smooth positive part of R_I, far below any rate that matters in mol/(m³ s).
 const SMALLEST_INITIATION: f64 = 1e-10;
 /// ε of φ, as a share of the pure monomer's concentration.
 const MONOMER_SHARE: f64 = 1e-4;
@@ -20,11 +20,11 @@ pub struct FreeRadical {
     pub monomer: usize,
     /// The polymer, as a species of the spec.
     pub polymer: usize,
-    /// m0, molar mass of a bound unit [kg/mol].
+    /// m0, molar mass of a bound unit in kg/mol.
     pub unit_mass: f64,
-    /// ΔH per mole of monomer bound, negative [J/mol].
+    /// ΔH per mole of monomer bound, negative in J/mol.
     pub heat: f64,
-    /// ε of φ [mol/m³].
+    /// ε of φ in mol/m³.
     pub monomer_epsilon: f64,
     pub(super) initiators: Vec<Initiator>,
     pub(super) thermal: Thermal,
@@ -61,29 +61,29 @@ pub(super) enum Transfer {
 /// Rates of the scheme in one stream tube, before they become changes of amounts.
 #[derive(Clone, Copy, Debug)]
 pub struct Radicals<N> {
-    /// R_I⁺ [mol/(m³ s)].
+    /// R_I⁺ in mol/(m³ s).
     pub initiation: N,
-    /// λ₀ [mol/m³].
+    /// λ₀ in mol/m³.
     pub live: N,
-    /// T_r [1/s].
+    /// T_r in 1/s.
     pub transfer: N,
-    /// k_t [m³/(mol s)].
+    /// k_t in m³/(mol s).
     pub termination: N,
     /// k_tc/k_t.
     pub combination_share: N,
-    /// k_p [M] [1/s].
+    /// k_p \[M\] in 1/s.
     pub growth: N,
 }
 
 impl<N: Number> Radicals<N> {
-    /// Lifetime of a radical, 1/(k_t λ₀ + T_r) [s].
+    /// Lifetime of a radical, 1/(k_t λ₀ + T_r) in s.
     pub fn lifetime(&self) -> N {
         (self.termination * self.live + self.transfer).recip()
     }
 }
 
 impl FreeRadical {
-    /// Sets ε of φ from the pure monomer's concentration [mol/m³].
+    /// Sets ε of φ from the pure monomer's concentration in mol/m³.
     pub fn set_monomer_scale(&mut self, pure_concentration: f64) {
         self.monomer_epsilon = MONOMER_SHARE * pure_concentration;
     }
@@ -137,8 +137,8 @@ impl FreeRadical {
 
     /// Radicals in one stream tube.
     ///
-    /// R_I = φ (Σ 2 f k_d [I] + 2 k_th [M]^m),  R_I⁺ = ½(R_I + √(R_I² + δ²)),  λ₀ = √(R_I⁺/k_t),
-    /// T_r = k_trM [M] + φ Σ k_trS [S],  φ = [M]²/([M]² + ε²), 0 for [M] ≤ 0
+    /// R_I = φ (Σ 2 f k_d \[I\] + 2 k_th \[M\]^m),  R_I⁺ = ½(R_I + √(R_I² + δ²)),  λ₀ = √(R_I⁺/k_t),
+    /// T_r = k_trM \[M\] + φ Σ k_trS \[S\],  φ = \[M\]²/(\[M\]² + ε²), 0 for \[M\] ≤ 0
     ///
     /// | symbol | here | unit | shape |
     /// | --- | --- | --- | --- |
@@ -191,12 +191,12 @@ impl FreeRadical {
     ///
     /// λ₁ = (R_I + R_p + T_r λ₀)/(T_r + k_t λ₀),
     /// dμ₀/dt = T_r λ₀ + (k_td + k_tc/2) λ₀²,  dμ₁/dt = R_p + R_I + T_r λ₀,
-    /// dμ₂/dt = R_I + T_r λ₀ + k_p[M](2λ₁ + λ₀) + k_tc λ₁²,  −d[M]/dt = dμ₁/dt
+    /// dμ₂/dt = R_I + T_r λ₀ + k_p\[M\](2λ₁ + λ₀) + k_tc λ₁²,  −d\[M\]/dt = dμ₁/dt
     ///
     /// | symbol | here | unit | shape |
     /// | --- | --- | --- | --- |
     /// | changes | added to `sources`, the three moments last | mol/(m³ s) | per amount, one stream tube |
-    /// | −d[M]/dt | returned | mol/(m³ s) | one stream tube |
+    /// | −d\[M\]/dt | returned | mol/(m³ s) | one stream tube |
     #[inline(always)]
     pub fn changes<N: Number>(&self, local: &Local<'_, N>, sources: &mut [N]) -> N {
         let r = self.radicals(local, sources);
@@ -222,14 +222,14 @@ impl FreeRadical {
         polymer / (polymer + local.monomer_fraction).at_least(LEAST)
     }
 
-    /// φ = [M]²/([M]² + ε²), 0 for [M] ≤ 0: initiation ends with the monomer.
+    /// φ = \[M\]²/(\[M\]² + ε²), 0 for \[M\] ≤ 0: initiation ends with the monomer.
     #[inline(always)]
     fn phi<N: Number>(&self, monomer: N) -> N {
         let square = monomer * monomer;
         monomer.select(square / (square + self.monomer_epsilon * self.monomer_epsilon), N::constant(0.0))
     }
 
-    /// [M]^m; for an m that is not whole, smooth and odd through 0.
+    /// \[M\]^m; for an m that is not whole, smooth and odd through 0.
     #[inline(always)]
     fn monomer_power<N: Number>(&self, monomer: N, order: f64) -> N {
         if order.fract() == 0.0 && order <= 9.0 {
@@ -261,11 +261,11 @@ impl FreeRadical {
 /// What the scheme sees of one stream tube.
 #[derive(Clone, Copy, Debug)]
 pub struct Local<'a, N> {
-    /// c_k [mol/m³], per species.
+    /// c_k in mol/m³, per species.
     pub concentrations: &'a [N],
-    /// T [K].
+    /// T \[K\].
     pub temperature: N,
-    /// 1/T [1/K].
+    /// 1/T in 1/K.
     pub inverse: N,
     /// w_p.
     pub polymer_fraction: N,

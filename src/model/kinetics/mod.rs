@@ -22,7 +22,7 @@ pub enum Scheme {
     /// It does not.
     None,
     /// Free radicals, quasi-steady.
-    FreeRadical(FreeRadical),
+    FreeRadical(Box<FreeRadical>),
 }
 
 impl Scheme {
@@ -32,7 +32,7 @@ impl Scheme {
     /// What the scheme's own reader finds.
     pub fn read(block: &Block<'_>, species: &SpeciesList) -> Result<Self, Reported> {
         block.kind_by("scheme", "polymerization scheme", SCHEMES, None)?;
-        Ok(Self::FreeRadical(FreeRadical::read(block, species)?))
+        Ok(Self::FreeRadical(Box::new(FreeRadical::read(block, species)?)))
     }
 
     /// The polymer's position among the species of the spec.
@@ -61,7 +61,7 @@ pub struct Chemistry {
     pub reactions: Vec<Reaction>,
     /// Polymerization.
     pub scheme: Scheme,
-    /// ε of concentrations to a power that is not whole [mol/m³].
+    /// ε of concentrations to a power that is not whole in mol/m³.
     pub power_epsilon: f64,
 }
 

@@ -9,7 +9,7 @@ use super::{KIND, VALID};
 
 /// Exponents beyond this are held: e¹⁰⁰ lies far beyond any property or rate.
 const MAX_EXPONENT: f64 = 100.0;
-/// Temperatures below this are held there: no liquid is colder [K].
+/// Temperatures below this are held there: no liquid is colder \[K\].
 const COLDEST: f64 = 20.0;
 
 /// Keys of the two laws and of rate constants.
@@ -67,11 +67,11 @@ pub const ANDRADE: About = About {
 /// Parameters of both laws, SI: y = value · exp(−t (1/T − inverse)).
 #[derive(Clone, Debug, PartialEq)]
 pub struct Arrhenius {
-    /// y at the temperature 1/`inverse` [the property's unit].
+    /// y at the temperature 1/`inverse` in the property's unit.
     value: f64,
-    /// 1/at, or 0 where `value` is the prefactor [1/K].
+    /// 1/at, or 0 where `value` is the prefactor in 1/K.
     inverse: f64,
-    /// E/R_g, negative for a law that falls [K].
+    /// E/R_g, negative for a law that falls \[K\].
     activation_temperature: f64,
 }
 

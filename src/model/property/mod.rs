@@ -64,7 +64,7 @@ pub const KINDS: &[&About] =
 #[derive(Clone, Debug, PartialEq)]
 pub struct Property {
     form: Form,
-    /// The range that was stated, or that a table has [K].
+    /// The range that was stated, or that a table has \[K\].
     range: Option<(f64, f64)>,
 }
 
@@ -163,7 +163,7 @@ impl Property {
         matches!(self.form, Form::Constant(_))
     }
 
-    /// The range that was stated, or that a table has [K].
+    /// The range that was stated, or that a table has \[K\].
     #[must_use]
     pub fn range(&self) -> Option<(f64, f64)> {
         self.range
@@ -187,6 +187,21 @@ fn quadrature<N: Number>(law: impl Fn(N) -> N, from: f64, to: N) -> N {
     let middle = (to + from) * 0.5;
     let add = |sum: N, (x, weight): &(f64, f64)| sum + law(middle + half * *x) * *weight;
     GAUSS.iter().fold(N::constant(0.0), add) * half
+}
+
+/// The coefficients (a_k, b_k) of a law in the lists `a` and `b`; `b` is 0 where it is not given.
+pub(in crate::model) fn coefficient_pairs(fields: &Fields<'_>) -> Vec<(f64, f64)> {
+    let a = fields.numbers("a").unwrap_or_default();
+    let b = fields.numbers("b").unwrap_or_else(|| vec![0.0; a.len()]);
+    if a.len() != b.len() {
+        let (at, key) = (fields.place_of("b"), "b".to_owned());
+        fields.problem(SpecError::LengthsDiffer { at, key, found: b.len(), other: "a", wanted: a.len() });
+    }
+    if fields.has("a") && a.is_empty() {
+        let (at, key) = (fields.place_of("a"), "a".to_owned());
+        fields.problem(SpecError::Needs { at, key, needs: "at least one coefficient".to_owned() });
+    }
+    a.into_iter().zip(b).collect()
 }
 
 /// Marks the key `valid` as read: [`Property::read_kind`] reads it for all laws.

@@ -36,11 +36,11 @@ pub const KINDS: &[&About] = &[
 /// What a viscosity law may depend on, in one stream tube.
 #[derive(Clone, Copy, Debug)]
 pub struct Fluid<N> {
-    /// T [K].
+    /// T \[K\].
     pub temperature: N,
     /// w_p, the polymer's mass fraction.
     pub polymer_fraction: N,
-    /// M_w, the weight-average molar mass in its smooth form [kg/mol].
+    /// M_w, the weight-average molar mass in its smooth form in kg/mol.
     pub molar_mass: N,
 }
 
@@ -86,7 +86,7 @@ impl Viscosity {
         }
     }
 
-    /// Zero-shear viscosity in one stream tube [Pa·s].
+    /// Zero-shear viscosity in one stream tube in Pa·s.
     #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.form {
@@ -96,7 +96,7 @@ impl Viscosity {
         }
     }
 
-    /// The range of temperature that was stated, or that a table has [K].
+    /// The range of temperature that was stated, or that a table has \[K\].
     #[must_use]
     pub fn range(&self) -> Option<(f64, f64)> {
         self.range

@@ -1,7 +1,7 @@
 //! Viscosity of a polymer in its monomer or solvent, by polymer content and molar mass.
 
 use crate::model::number::Number;
-use crate::model::property::{KIND, Property, VALID, skip_range};
+use crate::model::property::{KIND, Property, VALID, coefficient_pairs, skip_range};
 use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes};
 use crate::units::Dimension;
 
@@ -9,7 +9,7 @@ use super::{Fluid, PLAIN_KINDS, SHEAR};
 
 /// e⁶⁰ Pa·s lies beyond any fluid that flows.
 const MAX_EXPONENT: f64 = 60.0;
-/// Temperatures below this are held there: no liquid is colder [K].
+/// Temperatures below this are held there: no liquid is colder \[K\].
 const COLDEST: f64 = 20.0;
 
 pub const ABOUT: About = About {
@@ -59,9 +59,9 @@ pub const ABOUT: About = About {
 pub struct PolymerSolution {
     /// Viscosity without polymer.
     base: Base,
-    /// (a_k, b_k) for k from 1 [1, K].
+    /// (a_k, b_k) for k from 1 in 1, K.
     terms: Vec<(f64, f64)>,
-    /// M_ref [kg/mol].
+    /// M_ref in kg/mol.
     molar_mass_reference: f64,
     /// m.
     molar_mass_power: f64,
@@ -83,17 +83,7 @@ impl PolymerSolution {
     /// law beside coefficients of power 0.
     pub fn read(block: &Block<'_>) -> Result<Self, Reported> {
         let fields = block.open(&ABOUT);
-        let a = fields.numbers("a").unwrap_or_default();
-        let b = fields.numbers("b").unwrap_or_else(|| vec![0.0; a.len()]);
-        if a.len() != b.len() {
-            let (at, key) = (fields.place_of("b"), "b".to_owned());
-            fields.problem(SpecError::LengthsDiffer { at, key, found: b.len(), other: "a", wanted: a.len() });
-        }
-        if fields.has("a") && a.is_empty() {
-            let (at, key) = (fields.place_of("a"), "a".to_owned());
-            fields.problem(SpecError::Needs { at, key, needs: "at least one coefficient".to_owned() });
-        }
-        let mut pairs: Vec<(f64, f64)> = a.into_iter().zip(b).collect();
+        let mut pairs = coefficient_pairs(&fields);
         let first = if pairs.is_empty() { (0.0, 0.0) } else { pairs.remove(0) };
         let solvent = fields.child("solvent").map(|child| Property::read(&child, "viscosity", Dimension::VISCOSITY));
         let base = match solvent.map(|law| fields.take(law)) {

@@ -43,11 +43,11 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct VogelFulcherTammann {
-    /// η∞, the limit at high temperature [Pa·s].
+    /// η∞, the limit at high temperature in Pa·s.
     eta_inf: f64,
-    /// B, positive [K].
+    /// B, positive \[K\].
     b: f64,
-    /// T₀, where the law diverges [K].
+    /// T₀, where the law diverges \[K\].
     t_0: f64,
 }
 

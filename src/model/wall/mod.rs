@@ -17,7 +17,7 @@ pub const KINDS: &[&About] = &[&insulated::ABOUT, &wall_temperature::ABOUT, &jac
 pub enum Wall {
     /// No heat passes.
     Insulated,
-    /// The wetted surface has this temperature [K].
+    /// The wetted surface has this temperature \[K\].
     WallTemperature(f64),
     /// A coolant behind a resistance.
     Jacket(Jacket),
@@ -26,9 +26,9 @@ pub enum Wall {
 /// A wall as the balance of the outermost stream tube sees it.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Outside {
-    /// 1/U, infinite for an insulated wall [m² K/W].
+    /// 1/U, infinite for an insulated wall in m² K/W.
     pub resistance: f64,
-    /// The temperature beyond the resistance [K].
+    /// The temperature beyond the resistance \[K\].
     pub temperature: f64,
 }
 
@@ -67,7 +67,7 @@ impl Wall {
         }
     }
 
-    /// The coolant's or the wall's temperature, where it has one [K].
+    /// The coolant's or the wall's temperature, where it has one \[K\].
     #[must_use]
     pub fn reference_temperature(&self) -> Option<f64> {
         match self {

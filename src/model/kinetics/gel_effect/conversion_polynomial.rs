@@ -1,8 +1,8 @@
 //! Gel effect as a polynomial in the share of polymer in monomer plus polymer.
 
 use crate::model::number::Number;
-use crate::model::property::KIND;
-use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes};
+use crate::model::property::{KIND, coefficient_pairs};
+use crate::spec::{About, Block, Bound, Key, Need, Reported, Takes};
 use crate::units::Dimension;
 
 /// e⁶⁰ lies beyond any gel effect.
@@ -39,7 +39,7 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct ConversionPolynomial {
-    /// (a_k, b_k) [1, 1/K].
+    /// (a_k, b_k) in 1, 1/K.
     terms: Vec<(f64, f64)>,
     power: f64,
 }
@@ -51,13 +51,7 @@ impl ConversionPolynomial {
     /// A key that is missing, unknown or of the wrong dimension; `a` and `b` of unlike length.
     pub fn read(block: &Block<'_>) -> Result<Self, Reported> {
         let fields = block.open(&ABOUT);
-        let a = fields.numbers("a").unwrap_or_default();
-        let b = fields.numbers("b").unwrap_or_else(|| vec![0.0; a.len()]);
-        if a.len() != b.len() {
-            let (at, key) = (fields.place_of("b"), "b".to_owned());
-            fields.problem(SpecError::LengthsDiffer { at, key, found: b.len(), other: "a", wanted: a.len() });
-        }
-        let law = Self { terms: a.into_iter().zip(b).collect(), power: fields.quantity("power") };
+        let law = Self { terms: coefficient_pairs(&fields), power: fields.quantity("power") };
         fields.finish(law)
     }
 
