@@ -182,7 +182,7 @@ pub struct End {
     pub limit: Option<&'static str>,
     /// The section.
     pub section: String,
-    /// z from the inlet in m.
+    /// z from the inlet, in m.
     pub z: f64,
     /// Quantities of the place.
     pub figures: Vec<Figure>,

@@ -11,7 +11,7 @@ const CONVERGED: f64 = 1e-15;
 /// The mixing cup at one z.
 #[derive(Clone, Debug, PartialEq)]
 pub struct CupState {
-    /// n, μ, T in mol/kg, K.
+    /// n, μ, T, in mol/kg, K.
     pub state: Vec<f64>,
     /// w of each component, the polymer last.
     pub fractions: Vec<f64>,
@@ -24,13 +24,13 @@ impl CupState {
         self.state[self.state.len() - 1]
     }
 
-    /// ρ in kg/m³.
+    /// ρ, in kg/m³.
     #[must_use]
     pub fn density(&self, material: &Material) -> f64 {
         material.mixture.density(&self.fractions, self.temperature())
     }
 
-    /// η at zero shear in Pa·s.
+    /// η at zero shear, in Pa·s.
     #[must_use]
     pub fn viscosity(&self, material: &Material) -> f64 {
         material.mixture.viscosity(&material.fluid(&self.state, &self.fractions))

@@ -4,7 +4,7 @@ use crate::model::duct::tube::Tube;
 use crate::model::flow::Profile;
 use crate::model::numerics::Numerics;
 
-/// ṁᵢ of each stream tube: the exact flow of the inlet's uniform state between its faces in kg/s.
+/// ṁᵢ of each stream tube: the exact flow of the inlet's uniform state between its faces, in kg/s.
 ///
 /// The faces x = r/R come from the spacing; the share of the flow between the axis and x is x² for a flat
 /// profile and 2x² − x⁴ for Poiseuille's, which is also that of `from_viscosity` with a uniform viscosity.

@@ -79,7 +79,7 @@ impl System<'_> {
         }
     }
 
-    /// ∂(c_p dT/dz · ṁ)/∂y divided by c_p, with the geometry held in W/(m J/(kg K)).
+    /// ∂(c_p dT/dz · ṁ)/∂y divided by c_p, with the geometry held, in W/(m J/(kg K)).
     fn heat_slopes(&self, profile: &Profile, heat_gain: f64, i: usize, point: &Point<Dual<PASS>>) -> [f64; PASS] {
         let area = profile.geometry.areas[i];
         let heat_capacity = profile.points[i].heat_capacity;

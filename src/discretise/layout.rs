@@ -10,9 +10,9 @@ use crate::model::local::Material;
 /// An integral along z that is carried with the state.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Integral {
-    /// ∫ G dz, pressure lost to friction in Pa.
+    /// ∫ G dz, pressure lost to friction, in Pa.
     Friction,
-    /// ∫ ρ̄ g sin θ dz, pressure lost to height in Pa.
+    /// ∫ ρ̄ g sin θ dz, pressure lost to height, in Pa.
     Gravity,
     /// ∫ P_w q_w dz, heat out of the fluid through the wall \[W\].
     WallHeat,

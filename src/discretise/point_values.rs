@@ -8,17 +8,17 @@ use super::spline::Spline;
 pub struct Peak {
     /// The largest value.
     pub value: f64,
-    /// r in m.
+    /// r, in m.
     pub r: f64,
 }
 
 impl Profile {
-    /// ⟨r²⟩ of every stream tube in m².
+    /// ⟨r²⟩ of every stream tube, in m².
     fn mean_squares(&self) -> Vec<f64> {
         (0..self.n_tubes()).map(|i| self.geometry.mean_square(i)).collect()
     }
 
-    /// R² in m².
+    /// R², in m².
     fn wall_square(&self) -> f64 {
         self.geometry.squares[self.n_tubes()]
     }

@@ -12,23 +12,23 @@ pub struct Profile {
     pub points: Vec<Point<f64>>,
     /// T, per stream tube \[K\].
     pub temperatures: Vec<f64>,
-    /// R, per amount and tube, tube by tube in mol/(m³ s).
+    /// R, per amount and tube, tube by tube, in mol/(m³ s).
     pub sources: Vec<f64>,
-    /// ṁᵢ/ρᵢ in m³/s.
+    /// ṁᵢ/ρᵢ, in m³/s.
     pub volume_flows: Vec<f64>,
     /// Faces, areas, velocities, friction.
     pub geometry: Geometry,
-    /// ρD: per tube where all share one diffusivity, else per component and tube in kg/(m s).
+    /// ρD: per tube where all share one diffusivity, else per component and tube, in kg/(m s).
     pub transport: Vec<f64>,
-    /// P J of each amount on the face at hand in mol/(s m).
+    /// P J of each amount on the face at hand, in mol/(s m).
     pub fluxes: Vec<f64>,
-    /// ηᵢ, per stream tube in Pa·s.
+    /// ηᵢ, per stream tube, in Pa·s.
     pub viscosities: Vec<f64>,
-    /// αᵢ, per stream tube; 0 without viscous heating in 1/K.
+    /// αᵢ, per stream tube; 0 without viscous heating, in 1/K.
     pub expansions: Vec<f64>,
-    /// AᵢΦᵢ, per stream tube; 0 without viscous heating in W/m.
+    /// AᵢΦᵢ, per stream tube; 0 without viscous heating, in W/m.
     pub viscous_heat: Vec<f64>,
-    /// ρ̄ g sin θ in Pa/m.
+    /// ρ̄ g sin θ, in Pa/m.
     pub gravity_gradient: f64,
     /// The wall.
     pub wall: WallState,
@@ -63,19 +63,19 @@ impl Profile {
         self.points.len()
     }
 
-    /// Σ ṁᵢ/ρᵢ in m³/s.
+    /// Σ ṁᵢ/ρᵢ, in m³/s.
     #[must_use]
     pub fn volume_flow(&self) -> f64 {
         self.volume_flows.iter().sum()
     }
 
-    /// ū in m/s.
+    /// ū, in m/s.
     #[must_use]
     pub fn mean_velocity(&self) -> f64 {
         self.volume_flow() / self.geometry.area()
     }
 
-    /// ρ̄, mean over the cross-section in kg/m³.
+    /// ρ̄, mean over the cross-section, in kg/m³.
     #[must_use]
     pub fn mean_density(&self) -> f64 {
         let held: f64 = self.points.iter().zip(&self.geometry.areas).map(|(point, area)| point.density * area).sum();

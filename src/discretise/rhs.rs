@@ -24,7 +24,7 @@ pub struct System<'p> {
     pub section: &'p Section,
     /// Offsets of the state.
     pub layout: Layout,
-    /// ṁᵢ in kg/s.
+    /// ṁᵢ, in kg/s.
     pub flows: Vec<f64>,
     room: RefCell<Room>,
 }
@@ -57,8 +57,8 @@ impl<'p> System<'p> {
 
     /// d(state)/dz.
     ///
-    /// ṁᵢ dn_k,i/dz = −Δ_f in P J_k + Aᵢ R_k,i
-    /// ṁᵢ c_p,i dTᵢ/dz = Δ_f in P λ ∂T/∂r − Aᵢ Σ ΔH_j rate_j,i + AᵢΦᵢ − ½ Σ_{its faces} P j_h ΔT
+    /// ṁᵢ dn_k,i/dz = −Δ_f(P J_k) + Aᵢ R_k,i
+    /// ṁᵢ c_p,i dTᵢ/dz = Δ_f(P λ ∂T/∂r) − Aᵢ Σ ΔH_j rate_j,i + AᵢΦᵢ − ½ Σ_{its faces} P j_h ΔT
     ///
     /// | symbol | here | unit | shape |
     /// | --- | --- | --- | --- |
@@ -167,7 +167,7 @@ impl<'p> System<'p> {
         set(Integral::HeatCapacityGap, self.heat_capacity_gap(state, profile));
     }
 
-    /// Σ A Σ_k R_k M_k (h_k(T) − h_k(T_feed)); 0 where all heat capacities are equal in W/m.
+    /// Σ A Σ_k R_k M_k (h_k(T) − h_k(T_feed)); 0 where all heat capacities are equal, in W/m.
     fn heat_capacity_gap(&self, state: &[f64], profile: &Profile) -> f64 {
         let material = self.material();
         if material.mixture.has_one_heat_capacity() {

@@ -25,9 +25,9 @@ pub struct Trajectory<'p> {
 pub struct SectionLeg<'p> {
     /// The section's system.
     pub system: System<'p>,
-    /// z of the section's inlet in m.
+    /// z of the section's inlet, in m.
     pub start: f64,
-    /// p at the section's inlet, if the feed's is given in Pa.
+    /// p at the section's inlet, if the feed's is given, in Pa.
     pub pressure: Option<f64>,
     /// What was recorded.
     pub leg: Leg,

@@ -6,9 +6,9 @@
 pub struct NumericsError {
     /// The section.
     pub section: String,
-    /// z from the inlet in m.
+    /// z from the inlet, in m.
     pub z: f64,
-    /// The last step tried in m.
+    /// The last step tried, in m.
     pub step: f64,
     /// Lowest and highest temperature of the stream tubes there \[K\].
     pub temperatures: (f64, f64),

@@ -22,10 +22,10 @@ const PLACE_TOLERANCE: f64 = 1e-7;
 /// The golden section's ratio, (√5 − 1)/2.
 const GOLDEN: f64 = 0.618_033_988_749_894_9;
 
-/// A state and its place, z counted from the section's inlet in m.
+/// A state and its place, z counted from the section's inlet, in m.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Station {
-    /// z in m.
+    /// z, in m.
     pub z: f64,
     /// The state there.
     pub state: Vec<f64>,

@@ -14,9 +14,9 @@ pub enum Limit {
     LowestTemperature(f64),
     /// T of any stream tube above \[K\].
     HighestTemperature(f64),
-    /// p below; the pressure at the section's inlet and the bound in Pa.
+    /// p below; the pressure at the section's inlet and the bound, in Pa.
     LowestPressure { at_inlet: f64, lowest: f64 },
-    /// η of any stream tube above in Pa·s.
+    /// η of any stream tube above, in Pa·s.
     HighestViscosity(f64),
     /// w_p of any stream tube above.
     HighestPolymerFraction(f64),

@@ -62,7 +62,7 @@ fn tube_scales(system: &System<'_>) -> Vec<f64> {
     scales
 }
 
-/// Monomer and bound units of the feed, n_M + μ₁ in mol/kg.
+/// Monomer and bound units of the feed, n_M + μ₁, in mol/kg.
 fn monomer_units(material: &Material, fed: &[f64]) -> f64 {
     match &material.chemistry.scheme {
         Scheme::None => 0.0,
@@ -70,7 +70,7 @@ fn monomer_units(material: &Material, fed: &[f64]) -> f64 {
     }
 }
 
-/// c_p of the feed in J/(kg K).
+/// c_p of the feed, in J/(kg K).
 fn heat_capacity(system: &System<'_>) -> f64 {
     let mut work = system.material().workspace();
     system.material().evaluate(&system.plant.feed.state, &mut work).heat_capacity

@@ -152,7 +152,7 @@ fn slow_radicals(run: &RunView<'_>) -> Option<String> {
     })
 }
 
-/// Mass held over mass flow, between the stations by the trapezoidal rule in s.
+/// Mass held over mass flow, between the stations by the trapezoidal rule, in s.
 fn residence_time(run: &RunView<'_>) -> f64 {
     let held = |station: &StationView<'_>| station.profile.mean_density() * station.profile.geometry.area();
     let of_section = |stations: &Vec<StationView<'_>>| -> f64 {

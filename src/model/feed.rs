@@ -103,11 +103,11 @@ pub const POLYMER: About = About {
 /// How much flows.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Amount {
-    /// in kg/s.
+    ///, in kg/s.
     MassFlow(f64),
-    /// in m³/s.
+    ///, in m³/s.
     VolumeFlow(f64),
-    /// in m/s.
+    ///, in m/s.
     MeanVelocity(f64),
 }
 
@@ -118,14 +118,14 @@ pub enum Basis {
     Mass,
     /// Mole fractions.
     Mole,
-    /// Concentrations in mol/m³.
+    /// Concentrations, in mol/m³.
     Concentration,
 }
 
 /// The polymer of a stream.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct FedPolymer {
-    /// M_n in kg/mol.
+    /// M_n, in kg/mol.
     pub number_average_molar_mass: f64,
     /// M_w/M_n.
     pub dispersity: f64,
@@ -138,7 +138,7 @@ pub struct Stream {
     pub amount: Amount,
     /// T \[K\].
     pub temperature: f64,
-    /// p at the inlet in Pa, if given.
+    /// p at the inlet, in Pa, if given.
     pub pressure: Option<f64>,
     /// How the composition is counted.
     pub basis: Basis,

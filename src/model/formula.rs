@@ -113,7 +113,7 @@ impl Formula {
         (groups.is_empty() && !atoms.is_empty()).then_some(Self(atoms))
     }
 
-    /// Molar mass in kg/mol.
+    /// Molar mass, in kg/mol.
     #[must_use]
     pub fn molar_mass(&self) -> f64 {
         let weight = |element: &str| ATOMIC_WEIGHTS.iter().find(|(name, _)| *name == element).map_or(0.0, |e| e.1);

@@ -91,9 +91,9 @@ pub struct Limits {
     pub lowest_temperature: f64,
     /// Highest temperature of any stream tube \[K\].
     pub highest_temperature: f64,
-    /// Lowest pressure, if the feed's is given in Pa.
+    /// Lowest pressure, if the feed's is given, in Pa.
     pub lowest_pressure: f64,
-    /// Highest zero-shear viscosity in Pa·s.
+    /// Highest zero-shear viscosity, in Pa·s.
     pub highest_viscosity: f64,
     /// Highest mass fraction of polymer.
     pub highest_polymer_fraction: f64,

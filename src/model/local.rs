@@ -1,7 +1,7 @@
 //! The physics at one point: from the state of a stream tube to its properties and sources.
 //!
-//! The state of a stream tube is the amounts of the species in mol/kg, the moments of the polymer in mol/kg and
-//! the temperature \[K\], in this order (model page, §2). A species without a molar mass counts in kilograms.
+//! The state of a stream tube is the amounts of the species, in mol/kg, the moments of the polymer in mol/kg and
+//! the temperature in K, in this order (model page, §2). A species without a molar mass counts in kilograms.
 
 use super::kinetics::free_radical::Local;
 use super::kinetics::{Chemistry, Scheme};
@@ -15,7 +15,7 @@ const COLDEST: f64 = 20.0;
 pub const ENTHALPY_REFERENCE: f64 = 298.15;
 /// Added to μ₂ and μ₁ inside a viscosity law, so that M_w is finite without polymer in mol/kg (model page, §5).
 const MOMENT_FLOORS: (f64, f64) = (2e-6, 1e-9);
-/// δ of the smooth positive parts of μ₂ and μ₁ there, a thousandth of the floors in mol/kg.
+/// δ of the smooth positive parts of μ₂ and μ₁ there, a thousandth of the floors, in mol/kg.
 const MOMENT_DELTAS: (f64, f64) = (2e-9, 1e-12);
 
 /// The fluid: which amounts a stream tube has and what follows from them.
@@ -23,7 +23,7 @@ const MOMENT_DELTAS: (f64, f64) = (2e-9, 1e-12);
 pub struct Material {
     /// Names of the species that the run has.
     pub species: Vec<String>,
-    /// M_k; 1 where none is given, so that amounts count kilograms in kg/mol.
+    /// M_k; 1 where none is given, so that amounts count kilograms, in kg/mol.
     pub molar_masses: Vec<f64>,
     /// Whether a molar mass was given.
     pub has_molar_mass: Vec<bool>,
@@ -40,15 +40,15 @@ pub struct Material {
 /// What one stream tube is like.
 #[derive(Clone, Copy, Debug)]
 pub struct Point<N> {
-    /// ρ in kg/m³.
+    /// ρ, in kg/m³.
     pub density: N,
-    /// c_p in J/(kg K).
+    /// c_p, in J/(kg K).
     pub heat_capacity: N,
-    /// λ in W/(m K).
+    /// λ, in W/(m K).
     pub conductivity: N,
-    /// η at zero shear in Pa·s.
+    /// η at zero shear, in Pa·s.
     pub viscosity: N,
-    /// −Σ ΔH rate in W/m³.
+    /// −Σ ΔH rate, in W/m³.
     pub reaction_heat: N,
 }
 
@@ -57,9 +57,9 @@ pub struct Point<N> {
 pub struct Workspace<N> {
     /// w of each component, the polymer last.
     pub fractions: Vec<N>,
-    /// c_k in mol/m³, per species.
+    /// c_k, in mol/m³, per species.
     concentrations: Vec<N>,
-    /// R_k, per amount in mol/(m³ s).
+    /// R_k, per amount, in mol/(m³ s).
     pub sources: Vec<N>,
 }
 
@@ -103,7 +103,7 @@ impl Material {
         self.n_species() + usize::from(self.has_polymer())
     }
 
-    /// m0, molar mass of a bound unit; 1 without polymer in kg/mol.
+    /// m0, molar mass of a bound unit; 1 without polymer, in kg/mol.
     #[must_use]
     pub fn unit_mass(&self) -> f64 {
         match &self.chemistry.scheme {
@@ -139,7 +139,7 @@ impl Material {
         }
     }
 
-    /// The weight-average molar mass in its smooth form, for viscosity laws in kg/mol.
+    /// The weight-average molar mass in its smooth form, for viscosity laws, in kg/mol.
     ///
     /// M_w = m0 (μ₂⁺ + 2e-6)/(μ₁⁺ + 1e-9)
     #[inline(always)]
@@ -162,14 +162,14 @@ impl Material {
         Fluid { temperature: state[self.n_amounts()], polymer_fraction, molar_mass: self.smooth_molar_mass(state) }
     }
 
-    /// α = −(1/ρ) ∂ρ/∂T of a stream tube at fixed composition in 1/K.
+    /// α = −(1/ρ) ∂ρ/∂T of a stream tube at fixed composition, in 1/K.
     pub fn expansion(&self, state: &[f64], fractions: &mut [f64]) -> f64 {
         self.fractions(state, fractions);
         let temperature = state[self.n_amounts()];
         self.mixture.expansion(fractions, temperature, self.mixture.density(fractions, temperature))
     }
 
-    /// Lifetime of a radical where radicals are quasi-steady, 1/(k_t λ₀ + T_r) in s.
+    /// Lifetime of a radical where radicals are quasi-steady, 1/(k_t λ₀ + T_r), in s.
     #[must_use]
     pub fn radical_lifetime(&self, state: &[f64]) -> Option<f64> {
         let Scheme::FreeRadical(scheme) = &self.chemistry.scheme else { return None };

@@ -287,44 +287,44 @@ fn read_law(fields: &Fields<'_>, which: Which) -> Option<Property> {
 }
 
 impl Mixture {
-    /// ρ in kg/m³; 1/ρ = Σ w_k/ρ_k.
+    /// ρ, in kg/m³; 1/ρ = Σ w_k/ρ_k.
     #[inline(always)]
     pub fn density<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.density.sum(fractions, |law| law.at(temperature).at_least(LEAST).recip()).at_least(1e-9).recip()
     }
 
-    /// α = −(1/ρ) ∂ρ/∂T at fixed composition in 1/K; α = ρ Σ w_k d(1/ρ_k)/dT.
+    /// α = −(1/ρ) ∂ρ/∂T at fixed composition, in 1/K; α = ρ Σ w_k d(1/ρ_k)/dT.
     #[inline(always)]
     pub fn expansion<N: Number>(&self, fractions: &[N], temperature: N, density: N) -> N {
         let slope = |law: &Property| law.at(Tangent::variable(temperature)).at_least(LEAST).recip().slope;
         self.density.sum(fractions, slope) * density
     }
 
-    /// 1/ρ_k of a component in m³/kg.
+    /// 1/ρ_k of a component, in m³/kg.
     #[must_use]
     pub fn specific_volume(&self, component: usize, temperature: f64) -> f64 {
         self.density.of(component).at(temperature).at_least(LEAST).recip()
     }
 
-    /// c_p in J/(kg K); c_p = Σ w_k c_p,k.
+    /// c_p, in J/(kg K); c_p = Σ w_k c_p,k.
     #[inline(always)]
     pub fn heat_capacity<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.heat_capacity.sum(fractions, |law| law.at(temperature)).at_least(LEAST)
     }
 
-    /// c_p,k of one component in J/(kg K).
+    /// c_p,k of one component, in J/(kg K).
     #[inline(always)]
     pub fn component_heat_capacity<N: Number>(&self, component: usize, temperature: N) -> N {
         self.heat_capacity.of(component).at(temperature)
     }
 
-    /// ∫ c_p,k dT of one component from a temperature to another in J/kg.
+    /// ∫ c_p,k dT of one component from a temperature to another, in J/kg.
     #[must_use]
     pub fn component_enthalpy(&self, component: usize, from: f64, to: f64) -> f64 {
         self.heat_capacity.of(component).integral(from, to)
     }
 
-    /// h = Σ w_k ∫ c_p,k dT from a reference in J/kg.
+    /// h = Σ w_k ∫ c_p,k dT from a reference, in J/kg.
     #[must_use]
     pub fn enthalpy(&self, fractions: &[f64], from: f64, to: f64) -> f64 {
         self.heat_capacity.sum(fractions, |law| law.integral(from, to))
@@ -342,7 +342,7 @@ impl Mixture {
         self.has_one_heat_capacity() && self.heat_capacity.groups[0].0.is_constant()
     }
 
-    /// λ in W/(m K); λ = Σ w_k λ_k.
+    /// λ, in W/(m K); λ = Σ w_k λ_k.
     #[inline(always)]
     pub fn conductivity<N: Number>(&self, fractions: &[N], temperature: N) -> N {
         self.conductivity.sum(fractions, |law| law.at(temperature)).at_least(LEAST * LEAST)
@@ -360,7 +360,7 @@ impl Mixture {
         !matches!(self.diffusivity, Diffusivity::None)
     }
 
-    /// D of one component in m²/s.
+    /// D of one component, in m²/s.
     #[inline(always)]
     pub fn diffusivity<N: Number>(&self, component: usize, temperature: N) -> N {
         match &self.diffusivity {
@@ -376,7 +376,7 @@ impl Mixture {
         self.viscosity.is_some()
     }
 
-    /// η at zero shear in Pa·s; 1 where none was given, which nothing but a shape then uses.
+    /// η at zero shear, in Pa·s; 1 where none was given, which nothing but a shape then uses.
     #[inline(always)]
     pub fn viscosity<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.viscosity {

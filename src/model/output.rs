@@ -68,7 +68,7 @@ pub const PLACE: About = About {
 pub struct OutputPlace {
     /// The user's name.
     pub name: String,
-    /// z from the inlet in m.
+    /// z from the inlet, in m.
     pub z: f64,
     /// r/R, if a local value is asked for.
     pub position: Option<f64>,

@@ -109,11 +109,11 @@ pub struct Plant {
 /// The stream that enters, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Feed {
-    /// ṁ in kg/s.
+    /// ṁ, in kg/s.
     pub mass_flow: f64,
-    /// n_k, moments, T: the state of every stream tube at the inlet in mol/kg, K.
+    /// n_k, moments, T: the state of every stream tube at the inlet, in mol/kg, K.
     pub state: Vec<f64>,
-    /// p in Pa, if given.
+    /// p, in Pa, if given.
     pub pressure: Option<f64>,
 }
 
@@ -185,7 +185,7 @@ impl Plant {
         Ok(Self { material, feed, flow, sections, limits, numerics, output })
     }
 
-    /// L, the whole length in m.
+    /// L, the whole length, in m.
     #[must_use]
     pub fn length(&self) -> f64 {
         self.sections.iter().map(|section| section.length).sum()
@@ -372,7 +372,7 @@ fn free_volume(material: &Material, masses: &[f64], temperature: f64) -> f64 {
     1.0 - masses.iter().enumerate().map(taken).sum::<f64>()
 }
 
-/// Mass per volume of the species that takes the rest in kg/m³.
+/// Mass per volume of the species that takes the rest, in kg/m³.
 fn missing_mass(
     fields: &Fields<'_>,
     material: &Material,

@@ -52,7 +52,7 @@ pub const ABOUT: About = About {
 pub struct Section {
     /// The user's name.
     pub name: String,
-    /// L in m.
+    /// L, in m.
     pub length: f64,
     /// The duct here.
     pub duct: Duct,

@@ -103,7 +103,7 @@ pub struct Species {
     pub name: String,
     /// Where it is defined.
     pub place: Place,
-    /// Molar mass in kg/mol, if given.
+    /// Molar mass, in kg/mol, if given.
     pub molar_mass: Option<f64>,
     /// Formula, if given.
     pub formula: Option<Formula>,

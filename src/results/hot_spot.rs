@@ -12,9 +12,9 @@ const ROUNDING: f64 = 1e-12;
 pub struct HotSpot {
     /// T \[K\].
     pub temperature: f64,
-    /// z from the inlet in m.
+    /// z from the inlet, in m.
     pub z: f64,
-    /// r in m.
+    /// r, in m.
     pub r: f64,
     /// r/R.
     pub position: f64,

@@ -227,13 +227,13 @@ fn local_conversion(station: &StationView<'_>, i: usize, _: usize) -> Option<f64
     station.conversion(station.material().conversion_of?, station.tube(i))
 }
 
-/// M_n = m0 μ₁/μ₀ in kg/mol.
+/// M_n = m0 μ₁/μ₀, in kg/mol.
 fn number_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
     let moments = station.moments(amounts)?;
     Some(station.material().unit_mass() * moments[1] / moments[0])
 }
 
-/// M_w = m0 μ₂/μ₁ in kg/mol.
+/// M_w = m0 μ₂/μ₁, in kg/mol.
 fn weight_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
     let moments = station.moments(amounts)?;
     Some(station.material().unit_mass() * moments[2] / moments[1])

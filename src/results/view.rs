@@ -21,7 +21,7 @@ pub struct StationView<'a> {
     pub plant: &'a Plant,
     /// The section's passage.
     pub leg: &'a SectionLeg<'a>,
-    /// z from the inlet in m.
+    /// z from the inlet, in m.
     pub z: f64,
     /// The state.
     pub state: &'a [f64],
@@ -58,7 +58,7 @@ impl<'a> StationView<'a> {
         self.leg.system.layout.n_tubes
     }
 
-    /// n, μ, T of stream tube `i` in mol/kg, K.
+    /// n, μ, T of stream tube `i`, in mol/kg, K.
     #[must_use]
     pub fn tube(&self, i: usize) -> &'a [f64] {
         &self.state[self.leg.system.layout.tube(i)]
@@ -96,14 +96,14 @@ impl<'a> StationView<'a> {
         }
     }
 
-    /// The stress at the wall, GR/2, where there is a viscosity in Pa.
+    /// The stress at the wall, GR/2, where there is a viscosity, in Pa.
     #[must_use]
     pub fn wall_shear_stress(&self) -> Option<f64> {
         let radius = self.leg.system.section.duct.tube.radius;
         self.has_viscosity().then_some(0.5 * self.profile.geometry.friction_gradient * radius)
     }
 
-    /// The shear rate at the wall: of the shape, or GR/(2 η_N) in 1/s.
+    /// The shear rate at the wall: of the shape, or GR/(2 η_N), in 1/s.
     #[must_use]
     pub fn wall_shear_rate(&self) -> Option<f64> {
         let radius = self.leg.system.section.duct.tube.radius;
@@ -123,7 +123,7 @@ impl<'a> StationView<'a> {
         self.material().mixture.has_viscosity()
     }
 
-    /// p here in Pa.
+    /// p here, in Pa.
     #[must_use]
     pub fn pressure(&self) -> Value {
         let lost = self.integral(Integral::Friction) + self.integral(Integral::Gravity);

@@ -47,7 +47,7 @@ const RATIO_STEPS: &[Step] = &[("%", 0.01), ("ppm", 0.1)];
 /// A value as an engineer reads it, rounded to so many digits (5 is usual): the number and its
 /// unit. Zeros at the end are left out.
 ///
-/// Temperatures are in degC, pressures in bar, mbar or Pa, lengths in m, mm or um, ratios up to 1
+/// Temperatures are in degC, pressures in bar, mbar or Pa, lengths, in m, mm or um, ratios up to 1
 /// in % or ppm and above as bare numbers (so is a residual below 1e-7). What is not finite is `-`
 /// without a unit.
 #[must_use]

@@ -5,17 +5,17 @@ use super::dimension::Dimension;
 const BROCHURE: &str = "BIPM, The International System of Units, 9th edition (2019)";
 const SP_811: &str = "NIST Special Publication 811 (2008), appendix B.8";
 
-/// International foot in m.
+/// International foot, in m.
 const FOOT: f64 = 0.3048;
-/// Inch in m.
+/// Inch, in m.
 const INCH: f64 = 0.0254;
-/// Avoirdupois pound in kg.
+/// Avoirdupois pound, in kg.
 const POUND: f64 = 0.453_592_37;
 /// Standard acceleration of free fall in m/s2.
 const FREE_FALL: f64 = 9.806_65;
 /// Pound-force \[N\].
 const POUND_FORCE: f64 = POUND * FREE_FALL;
-/// Standard atmosphere in Pa, added to a gauge pressure.
+/// Standard atmosphere, in Pa, added to a gauge pressure.
 pub(super) const ATMOSPHERE: f64 = 101_325.0;
 /// Thermochemical and international table calorie \[J\].
 const CALORIE_TH: f64 = 4.184;

@@ -7,13 +7,13 @@ pub mod plug;
 /// The cross-section at one z.
 #[derive(Clone, Debug, Default)]
 pub struct Geometry {
-    /// y = r² at the faces, axis first, wall last in m².
+    /// y = r² at the faces, axis first, wall last, in m².
     pub squares: Vec<f64>,
-    /// Aᵢ in m².
+    /// Aᵢ, in m².
     pub areas: Vec<f64>,
-    /// v at the faces in m/s.
+    /// v at the faces, in m/s.
     pub velocities: Vec<f64>,
-    /// G, the friction gradient in Pa/m.
+    /// G, the friction gradient, in Pa/m.
     pub friction_gradient: f64,
 }
 
@@ -29,7 +29,7 @@ impl Geometry {
         }
     }
 
-    /// ⟨r²⟩ᵢ over the area of tube `i` in m².
+    /// ⟨r²⟩ᵢ over the area of tube `i`, in m².
     #[must_use]
     pub fn mean_square(&self, i: usize) -> f64 {
         0.5 * (self.squares[i] + self.squares[i + 1])
@@ -41,7 +41,7 @@ impl Geometry {
         8.0 * std::f64::consts::PI * self.squares[i + 1] / (self.squares[i + 2] - self.squares[i])
     }
 
-    /// g_w = 2R/(R² − ⟨r²⟩_N), the gradient at the wall per unit of difference in 1/m.
+    /// g_w = 2R/(R² − ⟨r²⟩_N), the gradient at the wall per unit of difference, in 1/m.
     #[must_use]
     pub fn wall_gradient(&self) -> f64 {
         let n = self.areas.len();
@@ -49,7 +49,7 @@ impl Geometry {
         2.0 * square.sqrt() / (square - self.mean_square(n - 1))
     }
 
-    /// A of the whole section in m².
+    /// A of the whole section, in m².
     #[must_use]
     pub fn area(&self) -> f64 {
         std::f64::consts::PI * self.squares[self.squares.len() - 1]

@@ -35,7 +35,7 @@ pub fn solve(tube: &Tube, volume_flows: &[f64], viscosities: &[f64], geometry: &
     geometry.friction_gradient = dissipated / total;
 }
 
-/// ⟨γ̇²⟩ of a parabola over a stream tube, 16 ū² ⟨r²⟩/R⁴ in 1/s².
+/// ⟨γ̇²⟩ of a parabola over a stream tube, 16 ū² ⟨r²⟩/R⁴, in 1/s².
 #[must_use]
 pub fn square_rate(tube: &Tube, mean_velocity: f64, mean_square: f64) -> f64 {
     let square = tube.radius * tube.radius;

@@ -1,9 +1,9 @@
-//! Conduction between stream tubes: Δ_f in P λ ∂T/∂r (model page, §2).
+//! Conduction between stream tubes: Δ_f(P λ ∂T/∂r) (model page, §2).
 
 use super::Gains;
 use crate::discretise::profile::Profile;
 
-/// λ on a face: the harmonic mean 2λᵢλᵢ₊₁/(λᵢ + λᵢ₊₁), resistances in series in W/(m K).
+/// λ on a face: the harmonic mean 2λᵢλᵢ₊₁/(λᵢ + λᵢ₊₁), resistances in series, in W/(m K).
 #[must_use]
 pub fn face_conductivity(inner: f64, outer: f64) -> f64 {
     2.0 * inner * outer / (inner + outer)

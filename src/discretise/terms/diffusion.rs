@@ -67,7 +67,7 @@ fn closed_on_mass(material: &Material, layout: &Layout, state: &[f64], profile: 
     }
 }
 
-/// P j_h on the face between tubes `i` and `i + 1` in W/(m K).
+/// P j_h on the face between tubes `i` and `i + 1`, in W/(m K).
 fn enthalpy_flow(material: &Material, layout: &Layout, profile: &Profile, i: usize) -> f64 {
     let middle = 0.5 * (profile.temperatures[i] + profile.temperatures[i + 1]);
     let heat_capacity = |component| material.mixture.component_heat_capacity(component, middle);

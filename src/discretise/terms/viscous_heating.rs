@@ -6,7 +6,7 @@ use crate::discretise::profile::Profile;
 use crate::model::duct::tube::Tube;
 use crate::model::flow::Profile as Shape;
 
-/// Heat of shear in tube `i`, without pressure work in W/m.
+/// Heat of shear in tube `i`, without pressure work, in W/m.
 ///
 /// `from_viscosity`: Aᵢ ⟨τ²⟩ᵢ/ηᵢ with ⟨τ²⟩ᵢ = G² ⟨r²⟩ᵢ/4; `parabolic`: Aᵢ ηᵢ ⟨γ̇²⟩ᵢ; `plug`: G ṁᵢ/ρᵢ
 #[must_use]

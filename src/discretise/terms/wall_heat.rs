@@ -7,7 +7,7 @@ use crate::model::wall::Outside;
 /// The wall at one z.
 #[derive(Clone, Copy, Debug, Default, PartialEq)]
 pub struct WallState {
-    /// q_w, positive out of the fluid in W/m².
+    /// q_w, positive out of the fluid, in W/m².
     pub heat_flux: f64,
     /// Temperature of the wetted surface \[K\].
     pub temperature: f64,

@@ -65,7 +65,7 @@ pub const ABOUT: About = About {
 pub struct Duct {
     /// The cross-section.
     pub tube: Tube,
-    /// θ, angle to the horizontal, positive upwards in rad.
+    /// θ, angle to the horizontal, positive upwards, in rad.
     pub inclination: f64,
 }
 

@@ -34,7 +34,7 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Exponential {
-    /// k at `at` in the rate constant's unit.
+    /// k at `at`, in the rate constant's unit.
     value: f64,
     /// Temperature that the value belongs to \[K\].
     at: f64,

@@ -8,7 +8,7 @@ use super::gel_effect::GelEffect;
 use super::rate_constant::RateConstant;
 use crate::model::number::Number;
 
-/// δ of the smooth positive part of R_I, far below any rate that matters in mol/(m³ s).
+/// δ of the smooth positive part of R_I, far below any rate that matters, in mol/(m³ s).
 const SMALLEST_INITIATION: f64 = 1e-10;
 /// ε of φ, as a share of the pure monomer's concentration.
 const MONOMER_SHARE: f64 = 1e-4;
@@ -20,11 +20,11 @@ pub struct FreeRadical {
     pub monomer: usize,
     /// The polymer, as a species of the spec.
     pub polymer: usize,
-    /// m0, molar mass of a bound unit in kg/mol.
+    /// m0, molar mass of a bound unit, in kg/mol.
     pub unit_mass: f64,
-    /// ΔH per mole of monomer bound, negative in J/mol.
+    /// ΔH per mole of monomer bound, negative, in J/mol.
     pub heat: f64,
-    /// ε of φ in mol/m³.
+    /// ε of φ, in mol/m³.
     pub monomer_epsilon: f64,
     pub(super) initiators: Vec<Initiator>,
     pub(super) thermal: Thermal,
@@ -61,29 +61,29 @@ pub(super) enum Transfer {
 /// Rates of the scheme in one stream tube, before they become changes of amounts.
 #[derive(Clone, Copy, Debug)]
 pub struct Radicals<N> {
-    /// R_I⁺ in mol/(m³ s).
+    /// R_I⁺, in mol/(m³ s).
     pub initiation: N,
-    /// λ₀ in mol/m³.
+    /// λ₀, in mol/m³.
     pub live: N,
-    /// T_r in 1/s.
+    /// T_r, in 1/s.
     pub transfer: N,
-    /// k_t in m³/(mol s).
+    /// k_t, in m³/(mol s).
     pub termination: N,
     /// k_tc/k_t.
     pub combination_share: N,
-    /// k_p \[M\] in 1/s.
+    /// k_p \[M\], in 1/s.
     pub growth: N,
 }
 
 impl<N: Number> Radicals<N> {
-    /// Lifetime of a radical, 1/(k_t λ₀ + T_r) in s.
+    /// Lifetime of a radical, 1/(k_t λ₀ + T_r), in s.
     pub fn lifetime(&self) -> N {
         (self.termination * self.live + self.transfer).recip()
     }
 }
 
 impl FreeRadical {
-    /// Sets ε of φ from the pure monomer's concentration in mol/m³.
+    /// Sets ε of φ from the pure monomer's concentration, in mol/m³.
     pub fn set_monomer_scale(&mut self, pure_concentration: f64) {
         self.monomer_epsilon = MONOMER_SHARE * pure_concentration;
     }
@@ -261,11 +261,11 @@ impl FreeRadical {
 /// What the scheme sees of one stream tube.
 #[derive(Clone, Copy, Debug)]
 pub struct Local<'a, N> {
-    /// c_k in mol/m³, per species.
+    /// c_k, in mol/m³, per species.
     pub concentrations: &'a [N],
     /// T \[K\].
     pub temperature: N,
-    /// 1/T in 1/K.
+    /// 1/T, in 1/K.
     pub inverse: N,
     /// w_p.
     pub polymer_fraction: N,

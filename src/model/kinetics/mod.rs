@@ -61,7 +61,7 @@ pub struct Chemistry {
     pub reactions: Vec<Reaction>,
     /// Polymerization.
     pub scheme: Scheme,
-    /// ε of concentrations to a power that is not whole in mol/m³.
+    /// ε of concentrations to a power that is not whole, in mol/m³.
     pub power_epsilon: f64,
 }
 

@@ -126,7 +126,7 @@ pub const EQUILIBRIUM: About = About {
 pub struct Reaction {
     /// The user's name.
     pub name: String,
-    /// (species, amount made less consumed) in mol per mol of extent.
+    /// (species, amount made less consumed), in mol per mol of extent.
     pub stoichiometry: Vec<(usize, f64)>,
     /// Species that the reaction consumes.
     pub consumes: Vec<usize>,
@@ -134,7 +134,7 @@ pub struct Reaction {
     reverse: Reverse,
     /// The rate constant, in mol, m³, s to the order.
     pub rate_constant: RateConstant,
-    /// ΔH, negative for an exothermic reaction in J per mol of extent.
+    /// ΔH, negative for an exothermic reaction, in J per mol of extent.
     pub heat: f64,
 }
 

@@ -67,9 +67,9 @@ pub const ANDRADE: About = About {
 /// Parameters of both laws, SI: y = value · exp(−t (1/T − inverse)).
 #[derive(Clone, Debug, PartialEq)]
 pub struct Arrhenius {
-    /// y at the temperature 1/`inverse` in the property's unit.
+    /// y at the temperature 1/`inverse`, in the property's unit.
     value: f64,
-    /// 1/at, or 0 where `value` is the prefactor in 1/K.
+    /// 1/at, or 0 where `value` is the prefactor, in 1/K.
     inverse: f64,
     /// E/R_g, negative for a law that falls \[K\].
     activation_temperature: f64,

@@ -25,7 +25,7 @@ pub const ABOUT: About = About {
 /// Parameter of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Constant {
-    /// y in the property's unit.
+    /// y, in the property's unit.
     pub value: f64,
 }
 

@@ -33,11 +33,11 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Linear {
-    /// y at `at` in the property's unit.
+    /// y at `at`, in the property's unit.
     value: f64,
     /// Temperature that the value belongs to \[K\].
     at: f64,
-    /// dy/dT in the property's unit per K.
+    /// dy/dT, in the property's unit per K.
     slope: f64,
 }
 

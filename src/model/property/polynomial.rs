@@ -32,7 +32,7 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Polynomial {
-    /// a_k in the property's unit per K to the k.
+    /// a_k, in the property's unit per K to the k.
     a: Vec<f64>,
     /// Where the powers count from \[K\].
     at: f64,

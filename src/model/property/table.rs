@@ -26,7 +26,7 @@ pub const ABOUT: About = About {
 /// A table as cubic pieces, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Table {
-    /// Value at the first point in the property's unit.
+    /// Value at the first point, in the property's unit.
     first: f64,
     pieces: Vec<Piece>,
 }
@@ -59,7 +59,7 @@ impl Table {
         law.ok_or(Reported)
     }
 
-    /// The table through points (T \[K\], y), ascending in T.
+    /// The table through points (T in K, y), ascending in T.
     fn through(points: &[(f64, f64)]) -> Self {
         let widths: Vec<f64> = points.windows(2).map(|p| p[1].0 - p[0].0).collect();
         let secants: Vec<f64> = points.windows(2).map(|p| (p[1].1 - p[0].1) / (p[1].0 - p[0].0)).collect();

@@ -40,7 +40,7 @@ pub struct Fluid<N> {
     pub temperature: N,
     /// w_p, the polymer's mass fraction.
     pub polymer_fraction: N,
-    /// M_w, the weight-average molar mass in its smooth form in kg/mol.
+    /// M_w, the weight-average molar mass in its smooth form, in kg/mol.
     pub molar_mass: N,
 }
 
@@ -86,7 +86,7 @@ impl Viscosity {
         }
     }
 
-    /// Zero-shear viscosity in one stream tube in Pa·s.
+    /// Zero-shear viscosity in one stream tube, in Pa·s.
     #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.form {

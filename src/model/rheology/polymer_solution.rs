@@ -59,9 +59,9 @@ pub const ABOUT: About = About {
 pub struct PolymerSolution {
     /// Viscosity without polymer.
     base: Base,
-    /// (a_k, b_k) for k from 1 in 1, K.
+    /// (a_k, b_k) for k from 1, in 1, K.
     terms: Vec<(f64, f64)>,
-    /// M_ref in kg/mol.
+    /// M_ref, in kg/mol.
     molar_mass_reference: f64,
     /// m.
     molar_mass_power: f64,

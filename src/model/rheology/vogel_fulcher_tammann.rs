@@ -43,7 +43,7 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct VogelFulcherTammann {
-    /// η∞, the limit at high temperature in Pa·s.
+    /// η∞, the limit at high temperature, in Pa·s.
     eta_inf: f64,
     /// B, positive \[K\].
     b: f64,

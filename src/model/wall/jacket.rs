@@ -36,7 +36,7 @@ pub const ABOUT: About = About {
 /// A jacket, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Jacket {
-    /// U, from the coolant to the wetted surface in W/(m² K).
+    /// U, from the coolant to the wetted surface, in W/(m² K).
     pub coefficient: f64,
     /// T_c \[K\].
     pub coolant_temperature: f64,

@@ -26,7 +26,7 @@ pub enum Wall {
 /// A wall as the balance of the outermost stream tube sees it.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Outside {
-    /// 1/U, infinite for an insulated wall in m² K/W.
+    /// 1/U, infinite for an insulated wall, in m² K/W.
     pub resistance: f64,
     /// The temperature beyond the resistance \[K\].
     pub temperature: f64,

@@ -39,7 +39,7 @@ pub const ABOUT: About = About {
 /// Parameters of the law, SI.
 #[derive(Clone, Debug, PartialEq)]
 pub struct ConversionPolynomial {
-    /// (a_k, b_k) in 1, 1/K.
+    /// (a_k, b_k), in 1, 1/K.
     terms: Vec<(f64, f64)>,
     power: f64,
 }

@@ -29,7 +29,7 @@ impl GelEffect {
         Ok(Self::ConversionPolynomial(ConversionPolynomial::read(block)?))
     }
 
-    /// The factor in one stream tube; temperature \[K\], share of polymer in monomer plus polymer.
+    /// The factor in one stream tube; temperature in K, share of polymer in monomer plus polymer.
     #[inline(always)]
     pub fn factor<N: Number>(&self, temperature: N, share: N) -> N {
         match self {
