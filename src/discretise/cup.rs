@@ -18,7 +18,7 @@ pub struct CupState {
 }
 
 impl CupState {
-    /// T \[K\].
+    /// T, in K.
     #[must_use]
     pub fn temperature(&self) -> f64 {
         self.state[self.state.len() - 1]
@@ -65,7 +65,7 @@ pub fn cup_state(material: &Material, layout: &Layout, flows: &[f64], state: &[f
     CupState { state: cup, fractions }
 }
 
-/// Σ ṁᵢ h(Tᵢ, nᵢ), counted from a reference \[W\].
+/// Σ ṁᵢ h(Tᵢ, nᵢ), counted from a reference, in W.
 #[must_use]
 pub fn enthalpy_flow(material: &Material, layout: &Layout, flows: &[f64], state: &[f64], reference: f64) -> f64 {
     let mut fractions = vec![0.0; material.n_components()];
@@ -77,7 +77,7 @@ pub fn enthalpy_flow(material: &Material, layout: &Layout, flows: &[f64], state:
     flows.iter().enumerate().map(|(i, flow)| flow * of_tube(i)).sum()
 }
 
-/// The temperature at which a composition has an enthalpy, by Newton \[K\].
+/// The temperature at which a composition has an enthalpy, by Newton, in K.
 fn temperature_at(material: &Material, fractions: &[f64], enthalpy: f64, first: f64) -> f64 {
     let mut temperature = first;
     for _ in 0..MOST_STEPS {

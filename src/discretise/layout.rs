@@ -14,14 +14,14 @@ pub enum Integral {
     Friction,
     /// ∫ ρ̄ g sin θ dz, pressure lost to height, in Pa.
     Gravity,
-    /// ∫ P_w q_w dz, heat out of the fluid through the wall \[W\].
+    /// ∫ P_w q_w dz, heat out of the fluid through the wall, in W.
     WallHeat,
-    /// ∫ Σ A (−ΔH rate) dz, heat set free by reactions \[W\].
+    /// ∫ Σ A (−ΔH rate) dz, heat set free by reactions, in W.
     ReactionHeat,
-    /// ∫ Σ A Φ dz, heat of shear and pressure work \[W\].
+    /// ∫ Σ A Φ dz, heat of shear and pressure work, in W.
     ViscousHeat,
     /// ∫ Σ A Σ_k R_k M_k (h_k(T) − h_k(T_feed)) dz: what a constant ΔH leaves open where heat capacities
-    /// are unlike \[W\].
+    /// are unlike, in W.
     HeatCapacityGap,
 }
 

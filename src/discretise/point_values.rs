@@ -32,7 +32,7 @@ impl Profile {
         Spline::through(squares, values)
     }
 
-    /// T at r/R \[K\].
+    /// T at r/R, in K.
     #[must_use]
     pub fn temperature_at(&self, position: f64) -> f64 {
         self.temperature_spline().at(position * position * self.wall_square())
@@ -45,7 +45,7 @@ impl Profile {
         Peak { value, r: square.max(0.0).sqrt() }
     }
 
-    /// The least temperature of the cross-section, wall surface included \[K\].
+    /// The least temperature of the cross-section, wall surface included, in K.
     #[must_use]
     pub fn lowest_temperature(&self) -> f64 {
         self.temperatures.iter().copied().fold(self.wall.temperature, f64::min)

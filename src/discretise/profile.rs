@@ -10,7 +10,7 @@ use crate::model::local::{Material, Point};
 pub struct Profile {
     /// Properties, per stream tube.
     pub points: Vec<Point<f64>>,
-    /// T, per stream tube \[K\].
+    /// T, per stream tube, in K.
     pub temperatures: Vec<f64>,
     /// R, per amount and tube, tube by tube, in mol/(m³ s).
     pub sources: Vec<f64>,

@@ -10,7 +10,7 @@ pub struct NumericsError {
     pub z: f64,
     /// The last step tried, in m.
     pub step: f64,
-    /// Lowest and highest temperature of the stream tubes there \[K\].
+    /// Lowest and highest temperature of the stream tubes there, in K.
     pub temperatures: (f64, f64),
     /// What the integrator says.
     pub reason: String,

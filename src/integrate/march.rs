@@ -112,7 +112,7 @@ pub fn march(system: &System<'_>, inlet: Vec<f64>, limits: Vec<Limit>, targets: 
     Ok(Leg { stations: recorder.stations, peaks: recorder.peaks, ended, work })
 }
 
-/// Lowest and highest temperature of the stream tubes \[K\].
+/// Lowest and highest temperature of the stream tubes, in K.
 fn temperatures(system: &System<'_>, state: &[f64]) -> (f64, f64) {
     let all = (0..system.layout.n_tubes).map(|i| state[system.layout.temperature(i)]);
     all.fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), t| (low.min(t), high.max(t)))
@@ -257,7 +257,7 @@ impl<'r, 'p> Recorder<'r, 'p> {
     }
 }
 
-/// The hottest of the stream tubes, and of the wall's surface where that may be hotter \[K\].
+/// The hottest of the stream tubes, and of the wall's surface where that may be hotter, in K.
 fn hottest(system: &System<'_>, state: &[f64]) -> f64 {
     let (_, hottest) = temperatures(system, state);
     let outside = system.section.wall.outside();

@@ -10,9 +10,9 @@ const LEAST_POLYMER: f64 = 1e-9;
 /// A limit that a run may leave.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Limit {
-    /// T of any stream tube below \[K\].
+    /// T of any stream tube below, in K.
     LowestTemperature(f64),
-    /// T of any stream tube above \[K\].
+    /// T of any stream tube above, in K.
     HighestTemperature(f64),
     /// p below; the pressure at the section's inlet and the bound, in Pa.
     LowestPressure { at_inlet: f64, lowest: f64 },

@@ -6,7 +6,7 @@ use crate::discretise::rhs::System;
 use crate::model::kinetics::Scheme;
 use crate::model::local::Material;
 
-/// Scale of temperatures \[K\].
+/// Scale of temperatures, in K.
 const TEMPERATURE_SCALE: f64 = 100.0;
 /// An amount counts at least as this share of the largest.
 const LEAST_SHARE: f64 = 1e-3;

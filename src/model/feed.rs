@@ -136,7 +136,7 @@ pub struct FedPolymer {
 pub struct Stream {
     /// How much flows.
     pub amount: Amount,
-    /// T \[K\].
+    /// T, in K.
     pub temperature: f64,
     /// p at the inlet, in Pa, if given.
     pub pressure: Option<f64>,

@@ -87,9 +87,9 @@ bound_block!(
 /// Limits of a run, SI. An infinite one is none.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Limits {
-    /// Lowest temperature of any stream tube \[K\].
+    /// Lowest temperature of any stream tube, in K.
     pub lowest_temperature: f64,
-    /// Highest temperature of any stream tube \[K\].
+    /// Highest temperature of any stream tube, in K.
     pub highest_temperature: f64,
     /// Lowest pressure, if the feed's is given, in Pa.
     pub lowest_pressure: f64,

@@ -9,9 +9,9 @@ use super::mixture::Mixture;
 use super::number::Number;
 use super::rheology::Fluid;
 
-/// Temperatures below this are held there before 1/T is taken: no liquid is colder \[K\].
+/// Temperatures below this are held there before 1/T is taken: no liquid is colder, in K.
 const COLDEST: f64 = 20.0;
-/// Reference of enthalpies \[K\]; it drops out of every balance.
+/// Reference of enthalpies, in K; it drops out of every balance.
 pub const ENTHALPY_REFERENCE: f64 = 298.15;
 /// Added to μ₂ and μ₁ inside a viscosity law, so that M_w is finite without polymer in mol/kg (model page, §5).
 const MOMENT_FLOORS: (f64, f64) = (2e-6, 1e-9);
@@ -187,7 +187,7 @@ impl Material {
         Some(scheme.radicals(&local, &mut sources).lifetime())
     }
 
-    /// Every law with a range of temperature that was stated or that a table has, by its path \[K\].
+    /// Every law with a range of temperature that was stated or that a table has, by its path, in K.
     #[must_use]
     pub fn ranges(&self) -> Vec<(String, (f64, f64))> {
         let mut all = self.mixture.ranges().to_vec();

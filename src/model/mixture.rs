@@ -391,7 +391,7 @@ impl Mixture {
         self.viscosity.as_ref().is_some_and(Viscosity::needs_polymer)
     }
 
-    /// Laws with a range of temperature, by path \[K\].
+    /// Laws with a range of temperature, by path, in K.
     #[must_use]
     pub fn ranges(&self) -> &[(String, (f64, f64))] {
         &self.ranges

@@ -118,7 +118,7 @@ pub struct Feed {
 }
 
 impl Feed {
-    /// T \[K\].
+    /// T, in K.
     #[must_use]
     pub fn temperature(&self) -> f64 {
         self.state[self.state.len() - 1]

@@ -10,7 +10,7 @@ const ROUNDING: f64 = 1e-12;
 /// The hottest point.
 #[derive(Clone, Debug, PartialEq)]
 pub struct HotSpot {
-    /// T \[K\].
+    /// T, in K.
     pub temperature: f64,
     /// z from the inlet, in m.
     pub z: f64,
@@ -22,7 +22,7 @@ pub struct HotSpot {
     pub section: String,
     /// Local conversion there.
     pub conversion: Option<f64>,
-    /// T less that of the coolant or wall there \[K\].
+    /// T less that of the coolant or wall there, in K.
     pub rise: Option<f64>,
     /// Where it lies in plain words, if at an end or at the wall.
     pub note: Option<&'static str>,

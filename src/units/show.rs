@@ -8,7 +8,7 @@ use super::read;
 const PLAIN: std::ops::Range<i32> = -3..6;
 /// More digits than this a number does not have.
 const MOST_DIGITS: usize = 17;
-/// Zero of the Celsius scale \[K\].
+/// Zero of the Celsius scale, in K.
 const CELSIUS_ZERO: f64 = 273.15;
 
 /// A unit and the smallest value in it that is shown in it.

@@ -9,7 +9,7 @@ use crate::model::wall::Outside;
 pub struct WallState {
     /// q_w, positive out of the fluid, in W/m².
     pub heat_flux: f64,
-    /// Temperature of the wetted surface \[K\].
+    /// Temperature of the wetted surface, in K.
     pub temperature: f64,
 }
 

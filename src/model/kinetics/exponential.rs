@@ -36,9 +36,9 @@ pub const ABOUT: About = About {
 pub struct Exponential {
     /// k at `at`, in the rate constant's unit.
     value: f64,
-    /// Temperature that the value belongs to \[K\].
+    /// Temperature that the value belongs to, in K.
     at: f64,
-    /// Rise that multiplies k by e \[K\].
+    /// Rise that multiplies k by e, in K.
     e_fold: f64,
 }
 

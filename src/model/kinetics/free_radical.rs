@@ -263,7 +263,7 @@ impl FreeRadical {
 pub struct Local<'a, N> {
     /// c_k, in mol/m³, per species.
     pub concentrations: &'a [N],
-    /// T \[K\].
+    /// T, in K.
     pub temperature: N,
     /// 1/T, in 1/K.
     pub inverse: N,

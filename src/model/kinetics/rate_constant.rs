@@ -58,7 +58,7 @@ impl RateConstant {
         }
     }
 
-    /// The range of temperature that was stated \[K\].
+    /// The range of temperature that was stated, in K.
     #[must_use]
     pub fn range(&self) -> Option<(f64, f64)> {
         self.range

@@ -9,7 +9,7 @@ use super::{KIND, VALID};
 
 /// Exponents beyond this are held: e¹⁰⁰ lies far beyond any property or rate.
 const MAX_EXPONENT: f64 = 100.0;
-/// Temperatures below this are held there: no liquid is colder \[K\].
+/// Temperatures below this are held there: no liquid is colder, in K.
 const COLDEST: f64 = 20.0;
 
 /// Keys of the two laws and of rate constants.
@@ -71,7 +71,7 @@ pub struct Arrhenius {
     value: f64,
     /// 1/at, or 0 where `value` is the prefactor, in 1/K.
     inverse: f64,
-    /// E/R_g, negative for a law that falls \[K\].
+    /// E/R_g, negative for a law that falls, in K.
     activation_temperature: f64,
 }
 

@@ -35,7 +35,7 @@ pub const ABOUT: About = About {
 pub struct Linear {
     /// y at `at`, in the property's unit.
     value: f64,
-    /// Temperature that the value belongs to \[K\].
+    /// Temperature that the value belongs to, in K.
     at: f64,
     /// dy/dT, in the property's unit per K.
     slope: f64,

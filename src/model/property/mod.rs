@@ -64,7 +64,7 @@ pub const KINDS: &[&About] =
 #[derive(Clone, Debug, PartialEq)]
 pub struct Property {
     form: Form,
-    /// The range that was stated, or that a table has \[K\].
+    /// The range that was stated, or that a table has, in K.
     range: Option<(f64, f64)>,
 }
 
@@ -163,7 +163,7 @@ impl Property {
         matches!(self.form, Form::Constant(_))
     }
 
-    /// The range that was stated, or that a table has \[K\].
+    /// The range that was stated, or that a table has, in K.
     #[must_use]
     pub fn range(&self) -> Option<(f64, f64)> {
         self.range

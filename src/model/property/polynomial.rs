@@ -34,7 +34,7 @@ pub const ABOUT: About = About {
 pub struct Polynomial {
     /// a_k, in the property's unit per K to the k.
     a: Vec<f64>,
-    /// Where the powers count from \[K\].
+    /// Where the powers count from, in K.
     at: f64,
 }
 

@@ -76,7 +76,7 @@ impl Table {
         Self { first: points[0].1, pieces: (0..widths.len()).map(piece).collect() }
     }
 
-    /// The first and the last temperature \[K\].
+    /// The first and the last temperature, in K.
     #[must_use]
     pub fn range(&self) -> (f64, f64) {
         let first = self.pieces.first().map_or(f64::NEG_INFINITY, |piece| piece.start);

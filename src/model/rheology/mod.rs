@@ -36,7 +36,7 @@ pub const KINDS: &[&About] = &[
 /// What a viscosity law may depend on, in one stream tube.
 #[derive(Clone, Copy, Debug)]
 pub struct Fluid<N> {
-    /// T \[K\].
+    /// T, in K.
     pub temperature: N,
     /// w_p, the polymer's mass fraction.
     pub polymer_fraction: N,
@@ -96,7 +96,7 @@ impl Viscosity {
         }
     }
 
-    /// The range of temperature that was stated, or that a table has \[K\].
+    /// The range of temperature that was stated, or that a table has, in K.
     #[must_use]
     pub fn range(&self) -> Option<(f64, f64)> {
         self.range

@@ -9,7 +9,7 @@ use super::{Fluid, PLAIN_KINDS, SHEAR};
 
 /// e⁶⁰ Pa·s lies beyond any fluid that flows.
 const MAX_EXPONENT: f64 = 60.0;
-/// Temperatures below this are held there: no liquid is colder \[K\].
+/// Temperatures below this are held there: no liquid is colder, in K.
 const COLDEST: f64 = 20.0;
 
 pub const ABOUT: About = About {

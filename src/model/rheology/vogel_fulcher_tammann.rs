@@ -45,9 +45,9 @@ pub const ABOUT: About = About {
 pub struct VogelFulcherTammann {
     /// η∞, the limit at high temperature, in Pa·s.
     eta_inf: f64,
-    /// B, positive \[K\].
+    /// B, positive, in K.
     b: f64,
-    /// T₀, where the law diverges \[K\].
+    /// T₀, where the law diverges, in K.
     t_0: f64,
 }
 

@@ -63,7 +63,7 @@ impl Coolants {
         if failed { Err(Reported) } else { Ok(coolants) }
     }
 
-    /// The temperature of a wall's coolant: one named, or a block of its own \[K\].
+    /// The temperature of a wall's coolant: one named, or a block of its own, in K.
     ///
     /// # Errors
     /// No coolant has the name, or the block is wrong.

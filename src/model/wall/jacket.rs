@@ -38,7 +38,7 @@ pub const ABOUT: About = About {
 pub struct Jacket {
     /// U, from the coolant to the wetted surface, in W/(m² K).
     pub coefficient: f64,
-    /// T_c \[K\].
+    /// T_c, in K.
     pub coolant_temperature: f64,
     /// The line of `coolants`, if it is one.
     pub coolant: Option<String>,

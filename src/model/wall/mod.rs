@@ -17,7 +17,7 @@ pub const KINDS: &[&About] = &[&insulated::ABOUT, &wall_temperature::ABOUT, &jac
 pub enum Wall {
     /// No heat passes.
     Insulated,
-    /// The wetted surface has this temperature \[K\].
+    /// The wetted surface has this temperature, in K.
     WallTemperature(f64),
     /// A coolant behind a resistance.
     Jacket(Jacket),
@@ -28,7 +28,7 @@ pub enum Wall {
 pub struct Outside {
     /// 1/U, infinite for an insulated wall, in m² K/W.
     pub resistance: f64,
-    /// The temperature beyond the resistance \[K\].
+    /// The temperature beyond the resistance, in K.
     pub temperature: f64,
 }
 
@@ -67,7 +67,7 @@ impl Wall {
         }
     }
 
-    /// The coolant's or the wall's temperature, where it has one \[K\].
+    /// The coolant's or the wall's temperature, where it has one, in K.
     #[must_use]
     pub fn reference_temperature(&self) -> Option<f64> {
         match self {

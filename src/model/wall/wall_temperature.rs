@@ -20,7 +20,7 @@ pub const ABOUT: About = About {
     ],
 };
 
-/// Reads the wall's temperature \[K\].
+/// Reads the wall's temperature, in K.
 ///
 /// # Errors
 /// The temperature is missing or wrong.
