@@ -9,9 +9,11 @@ use super::species::{Species, SpeciesList, Which};
 use crate::spec::{About, Block, Fields, Key, Need, Reported, SpecError, Takes};
 use crate::units::Dimension;
 
-/// Least density, heat capacity and conductivity in SI: a law that falls below it far outside its range
-/// stays finite there, and stop events judge the accepted state.
-const LEAST: f64 = 1e-3;
+/// Least density and heat capacity in SI: a law that falls below it far outside its range stays finite there, and
+/// stop events judge the accepted state. A constant below it is refused when it is read.
+const LEAST: f64 = crate::model::property::LEAST;
+/// Least conductivity, in W/(m K): next to nothing, so that a conductivity of 0 still divides.
+const LEAST_CONDUCTIVITY: f64 = 1e-15;
 
 pub const ABOUT: About = About {
     kind: "mixture",
@@ -345,7 +347,7 @@ impl Mixture {
     /// λ, in W/(m K); λ = Σ w_k λ_k.
     #[inline(always)]
     pub fn conductivity<N: Number>(&self, fractions: &[N], temperature: N) -> N {
-        self.conductivity.sum(fractions, |law| law.at(temperature)).at_least(LEAST * LEAST)
+        self.conductivity.sum(fractions, |law| law.at(temperature)).at_least(LEAST_CONDUCTIVITY)
     }
 
     /// Whether every component has the same diffusivity, so that no closing flux is needed.

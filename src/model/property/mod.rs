@@ -60,6 +60,9 @@ pub const RANGE: About = About {
 pub const KINDS: &[&About] =
     &[&constant::ABOUT, &linear::ABOUT, &polynomial::ABOUT, &table::ABOUT, &arrhenius::ARRHENIUS, &arrhenius::ANDRADE];
 
+/// Least density in kg/m³ and heat capacity in J/(kg K) of any fluid that flows in a tube.
+pub(in crate::model) const LEAST: f64 = 1e-3;
+
 /// A law of temperature, with the range it holds in.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Property {
@@ -115,14 +118,20 @@ impl Property {
         Ok(law)
     }
 
-    /// A density, heat capacity or viscosity of 0 is a slip of the pen.
+    /// A density, heat capacity or viscosity of next to nothing is a slip of the pen.
     fn check_positive(&self, block: &Block<'_>, subject: Dimension) -> Result<(), Reported> {
-        let must = [Dimension::DENSITY, Dimension::HEAT_CAPACITY, Dimension::VISCOSITY].contains(&subject);
+        let least = match subject {
+            _ if [Dimension::DENSITY, Dimension::HEAT_CAPACITY].contains(&subject) => LEAST,
+            _ if subject == Dimension::VISCOSITY => f64::MIN_POSITIVE,
+            _ => 0.0,
+        };
         match &self.form {
-            Form::Constant(law) if must && law.value == 0.0 => {
+            Form::Constant(law) if law.value < least => {
                 let (at, key) = (block.place(), block.last_step().to_owned());
-                let text = units::write(0.0, subject);
-                Err(block.refuse(SpecError::OutOfBounds { at, key, text, bound: "above 0".to_owned() }))
+                let text = units::write(law.value, subject);
+                let bound =
+                    if least == LEAST { units::write(LEAST, subject) + " or above" } else { "above 0".to_owned() };
+                Err(block.refuse(SpecError::OutOfBounds { at, key, text, bound }))
             }
             _ => Ok(()),
         }
