@@ -13,7 +13,7 @@ use std::path::{Path, PathBuf};
 use axirad::cli::diagnostic::draw_all;
 use axirad::simulate::read_spec;
 use axirad::spec::SpecError;
-use axirad::units::{self, Dimension};
+use axirad::units::{self, Dimension, UnitError};
 
 /// Folders of specs, by the stage that refuses them.
 const STAGES: [&str; 5] = ["text", "format", "keys", "values", "meaning"];
@@ -98,17 +98,26 @@ fn messages_are_lowercase_and_have_no_full_stop() {
     }
 }
 
-/// Whether an example is a value with a unit, or YAML. Words, keys and units stand for themselves.
+/// Whether an example is a value with a unit, a unit, or YAML. Words and keys stand for themselves.
 fn is_readable(example: &str, error: &SpecError) -> bool {
     let is_value = example.trim_start_matches('-').starts_with(|c: char| c.is_ascii_digit());
     if is_value {
-        return is_quantity(example);
+        return is_quantity(example) || is_unit(example);
     }
-    if !example.contains(": ") || matches!(error, SpecError::UnknownKey { .. } | SpecError::NoSuchPath { .. }) {
+    if matches!(error, SpecError::Unit { .. }) {
+        return example.len() == 1 || example.starts_with("axirad ") || is_unit(example);
+    }
+    if !example.contains(": ") {
         return true;
     }
-    // A value in capitals stands for one that only the user knows.
+    // a word in capitals stands for what only the user knows
     serde_yaml::from_str::<serde_yaml::Value>(example).is_ok_and(|value| value.is_mapping() || value.is_sequence())
+}
+
+/// Whether a unit is one, of whatever dimension.
+fn is_unit(text: &str) -> bool {
+    let found = units::read(&format!("1 {text}"), Dimension::RATIO);
+    matches!(found, Ok(_) | Err(UnitError::WrongDimension { .. }))
 }
 
 /// Whether some key of the format takes this value.

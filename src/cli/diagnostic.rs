@@ -10,7 +10,7 @@ use annotate_snippets::{Annotation, AnnotationKind, Group, Level, Origin, Render
 use anstream::adapter::strip_str;
 use serde_json::{Value, json};
 
-use crate::spec::{Location, SpecError};
+use crate::spec::{KeyPath, Location, Place, SpecError};
 
 /// Most mistakes drawn of one spec.
 const MOST_DRAWN: usize = 20;
@@ -33,8 +33,7 @@ pub fn draw(error: &SpecError, colour: bool) -> String {
     let title = text(&error.to_string());
     let excerpts = excerpts(error);
     let is_said = |step: &String| stands_in(step, &title) || excerpts.iter().any(|e| stands_in(step, &e.source));
-    let path = &error.at().path;
-    let note = (!path.0.iter().all(is_said)).then(|| text(&format!("in `{path}`")));
+    let note = path_to(error).filter(|path| !path.0.iter().all(is_said)).map(|path| text(&format!("in `{path}`")));
     let help = error.help().map(|help| text(&help));
 
     let mut group = Group::with_title(Level::ERROR.primary_title(title.as_str()).id(error.code()));
@@ -47,6 +46,21 @@ pub fn draw(error: &SpecError, colour: bool) -> String {
     let drawn = renderer.decor_style(DecorStyle::Ascii).term_width(WIDTH).render(&[group]);
     // blanks at the ends of lines show nothing, and editors remove them from the messages kept as examples
     drawn.lines().filter(|line| !is_idle(line)).map(|line| format!("{}\n", line.trim_end())).collect()
+}
+
+/// The path of the block or value that the mistake stands in: a key that is underlined says its own name, and
+/// an item of a list without a name is seen.
+fn path_to(error: &SpecError) -> Option<KeyPath> {
+    let Place { location, path } = error.at();
+    let underlined = location.source.text.get(location.bytes.clone()).unwrap_or_default();
+    let mut steps = path.0.as_slice();
+    while let Some((last, before)) = steps.split_last() {
+        if last != underlined.trim_matches(['"', '\'']) && !last.bytes().all(|byte| byte.is_ascii_digit()) {
+            return Some(KeyPath(steps.to_vec()));
+        }
+        steps = before;
+    }
+    None
 }
 
 /// Whether a line is the mark that the renderer puts before an excerpt whose place was already said.
@@ -238,7 +252,7 @@ fn stands_in(step: &str, text: &str) -> bool {
 mod tests {
     use super::*;
     use crate::spec::document::read_document;
-    use crate::spec::{KeyPath, Origin as Giver, Place, SourceText};
+    use crate::spec::{Origin as Giver, SourceText};
     use std::sync::Arc;
 
     fn unknown_key(text: &str, key: &str) -> SpecError {

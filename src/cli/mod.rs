@@ -104,8 +104,14 @@ fn words_of(info: &PanicHookInfo<'_>) -> String {
     let payload = info.payload();
     let words =
         payload.downcast_ref::<&str>().copied().or_else(|| payload.downcast_ref::<String>().map(String::as_str));
-    let place = info.location().map(|place| format!(" ({}, line {})", place.file(), place.line()));
+    let place = info.location().map(|place| format!(" ({}, line {})", end_of(place.file()), place.line()));
     format!("{}{}", words.unwrap_or("no words"), place.unwrap_or_default())
+}
+
+/// The last steps of a path: which file of which crate, not where it lay when axirad was built.
+fn end_of(path: &str) -> String {
+    let steps: Vec<&str> = path.split(['/', '\\']).collect();
+    steps[steps.len().saturating_sub(4)..].join("/")
 }
 
 fn fault_report(fault: &str) -> String {
@@ -128,6 +134,13 @@ mod tests {
         assert!(fault.starts_with("the tube has no wall (src/cli/mod.rs, line "), "{fault}");
         assert!(fault_report(&fault).contains(env!("CARGO_PKG_VERSION")));
         assert_eq!(guarded(|| ExitCode::LimitLeft), (ExitCode::LimitLeft, None));
+    }
+
+    #[test]
+    fn the_place_of_a_fault_names_no_folder_of_the_builder() {
+        assert_eq!(end_of("src/cli/mod.rs"), "src/cli/mod.rs");
+        assert_eq!(end_of("/a/b/registry/solver-0.19/src/ode/bdf.rs"), "solver-0.19/src/ode/bdf.rs");
+        assert_eq!(end_of("C:\\a\\b\\solver-0.19\\src\\ode\\bdf.rs"), "solver-0.19/src/ode/bdf.rs");
     }
 
     #[test]

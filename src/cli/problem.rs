@@ -91,3 +91,33 @@ pub fn reason(error: &io::Error) -> String {
     let text = error.to_string();
     text.split(" (os error").next().unwrap_or_default().to_owned()
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn failed_numerics_say_place_step_state_and_advice() {
+        let error = NumericsError {
+            section: "zone_2".to_owned(),
+            z: 1.25,
+            step: 1e-6,
+            temperatures: (358.15, 473.15),
+            reason: "the step became too small".to_owned(),
+        };
+        let problem = Problem::of_numerics(&error);
+        assert_eq!(problem.code, ExitCode::NumericsFailed);
+        let drawn = problem.draw();
+        for part in ["zone_2", "z = 1.25 m", "the step became too small", "1 um", "85 degC to 200 degC", "  help: "] {
+            assert!(drawn.contains(part), "{part}: {drawn}");
+        }
+        let entry = problem.to_json();
+        assert_eq!((&entry["z_m"], &entry["lowest_temperature_K"]), (&json!(1.25), &json!(358.15)));
+    }
+
+    #[test]
+    fn the_words_of_the_system_come_without_its_number() {
+        let error = io::Error::from_raw_os_error(2);
+        assert!(!reason(&error).contains("os error"), "{}", reason(&error));
+    }
+}

@@ -75,6 +75,10 @@ impl System<'_> {
                 block[n_vars - 1] = heat[slope] * per_flow;
                 let by_reaction = area * point.reaction_heat.slopes[slope];
                 self.set_tail(blocks, Integral::ReactionHeat, i, column, by_reaction);
+                if self.plant.flow.viscous_heating {
+                    let by_shear = self.friction_slope(profile, i) * point.viscosity.slopes[slope];
+                    self.set_tail(blocks, Integral::ViscousHeat, i, column, by_shear);
+                }
             }
         }
     }
@@ -83,22 +87,26 @@ impl System<'_> {
     fn heat_slopes(&self, profile: &Profile, heat_gain: f64, i: usize, point: &Point<Dual<PASS>>) -> [f64; PASS] {
         let area = profile.geometry.areas[i];
         let heat_capacity = profile.points[i].heat_capacity;
-        let friction = if self.plant.flow.viscous_heating {
-            let heat = friction_heat(self.plant.flow.profile, &self.section.duct.tube, profile, i);
-            let sign = match self.plant.flow.profile {
-                flow::Profile::Plug => 0.0,
-                flow::Profile::Parabolic => 1.0,
-                flow::Profile::FromViscosity => -1.0,
-            };
-            sign * heat / profile.viscosities[i]
-        } else {
-            0.0
-        };
+        let friction = self.friction_slope(profile, i);
         let total = heat_gain / heat_capacity;
         std::array::from_fn(|slope| {
             let gain = area * point.reaction_heat.slopes[slope] + friction * point.viscosity.slopes[slope];
             (gain - total * point.heat_capacity.slopes[slope]) / heat_capacity
         })
+    }
+
+    /// ∂(AᵢΦᵢ)/∂ηᵢ with the geometry held, in W/(m Pa s); 0 without viscous heating.
+    fn friction_slope(&self, profile: &Profile, i: usize) -> f64 {
+        if !self.plant.flow.viscous_heating {
+            return 0.0;
+        }
+        let heat = friction_heat(self.plant.flow.profile, &self.section.duct.tube, profile, i);
+        let sign = match self.plant.flow.profile {
+            flow::Profile::Plug => 0.0,
+            flow::Profile::Parabolic => 1.0,
+            flow::Profile::FromViscosity => -1.0,
+        };
+        sign * heat / profile.viscosities[i]
     }
 
     /// Diffusion and conduction between two stream tubes.

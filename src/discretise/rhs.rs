@@ -8,7 +8,7 @@ use super::grid::tube_flows;
 use super::layout::{Integral, Layout};
 use super::profile::Profile;
 use super::terms::{Gains, conduction, diffusion, reaction, viscous_heating, wall_heat};
-use super::tubes::{self, TubeRoom};
+use super::tubes::{TubeRoom, Tubes};
 use crate::model::STANDARD_GRAVITY;
 use crate::model::flow::Profile as Shape;
 use crate::model::local::Material;
@@ -112,7 +112,7 @@ impl<'p> System<'p> {
     /// Properties and sources of every stream tube.
     fn evaluate_tubes(&self, state: &[f64], profile: &mut Profile, room: &mut TubeRoom) {
         let material = self.material();
-        tubes::evaluate(material, &self.layout, &self.flows, state, room, profile);
+        Tubes { material, layout: &self.layout, flows: &self.flows, state }.evaluate(room, profile);
         if self.plant.flow.viscous_heating {
             let mut fractions = vec![0.0; material.n_components()];
             for i in 0..self.layout.n_tubes {

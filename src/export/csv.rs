@@ -12,9 +12,6 @@ pub const PROFILE_BEGINNING: &str = "section,z_m,";
 /// Header of the table of quantities.
 pub const QUANTITIES_HEADER: &str = "quantity,value,unit,reason";
 
-/// Numbers from here to the next are written without an exponent.
-const PLAIN: std::ops::Range<f64> = 1e-5..1e16;
-
 /// A table of profiles: the section, then a column a quantity.
 #[must_use]
 pub fn profiles(table: &Table) -> Vec<u8> {
@@ -23,9 +20,11 @@ pub fn profiles(table: &Table) -> Vec<u8> {
         suffix => format!("{name}_{suffix}"),
     };
     let mut rows = Rows::new();
-    rows.push(std::iter::once("section".to_owned()).chain(table.columns.iter().map(column)));
+    rows.words(std::iter::once("section".to_owned()).chain(table.columns.iter().map(column)));
     for (section, values) in &table.rows {
-        rows.push(std::iter::once(section.clone()).chain(values.iter().map(|value| cell(*value))));
+        rows.word(section);
+        values.iter().for_each(|value| rows.number(*value));
+        rows.end();
     }
     rows.into_bytes()
 }
@@ -34,42 +33,70 @@ pub fn profiles(table: &Table) -> Vec<u8> {
 #[must_use]
 pub fn quantities(figures: &[Figure]) -> Vec<u8> {
     let mut rows = Rows::new();
-    rows.push(QUANTITIES_HEADER.split(',').map(str::to_owned));
+    rows.words(QUANTITIES_HEADER.split(',').map(str::to_owned));
     for figure in figures {
-        let (value, reason) = match &figure.value {
-            Value::Number(value) => (cell(Some(*value)), ""),
-            Value::Word(word) => (word.clone(), ""),
-            Value::Missing(reason) => (String::new(), reason.as_str()),
+        rows.word(&figure.name);
+        let reason = match &figure.value {
+            Value::Number(value) => {
+                rows.number(Some(*value));
+                ""
+            }
+            Value::Word(word) => {
+                rows.word(word);
+                ""
+            }
+            Value::Missing(reason) => {
+                rows.number(None);
+                reason
+            }
         };
-        rows.push([figure.name.clone(), value, units::symbol(figure.dimension), reason.to_owned()].into_iter());
+        rows.word(&units::symbol(figure.dimension));
+        rows.word(reason);
+        rows.end();
     }
     rows.into_bytes()
 }
 
-/// A number in the fewest digits that read back as the same number; empty for none.
-fn cell(value: Option<f64>) -> String {
-    match value {
-        Some(0.0) => "0".to_owned(), // minus nothing too
-        Some(value) if PLAIN.contains(&value.abs()) => format!("{value}"),
-        Some(value) if value.is_finite() => format!("{value:e}"),
-        Some(_) | None => String::new(),
-    }
+/// Rows of a file on their way into memory, cell by cell.
+struct Rows {
+    writer: ::csv::Writer<Vec<u8>>,
+    /// Room for one number.
+    room: Vec<u8>,
 }
-
-/// Rows of a file on their way into memory.
-struct Rows(::csv::Writer<Vec<u8>>);
 
 impl Rows {
     fn new() -> Self {
-        Self(::csv::WriterBuilder::new().terminator(::csv::Terminator::Any(b'\n')).from_writer(Vec::new()))
+        let mut builder = ::csv::WriterBuilder::new();
+        let writer = builder.terminator(::csv::Terminator::Any(b'\n')).from_writer(Vec::new());
+        Self { writer, room: Vec::new() }
     }
 
-    fn push(&mut self, cells: impl Iterator<Item = String>) {
-        self.0.write_record(cells.map(String::into_bytes)).expect("rows of one table are of one length");
+    fn word(&mut self, word: &str) {
+        self.writer.write_field(word).expect("memory takes all that is written");
+    }
+
+    /// A number in the fewest digits that read back as the same number; empty for none.
+    fn number(&mut self, value: Option<f64>) {
+        self.room.clear();
+        if let Some(value) = value.filter(|value| value.is_finite()) {
+            let value = if value == 0.0 { 0.0 } else { value }; // no minus before nothing
+            serde_json::to_writer(&mut self.room, &value).expect("a finite number can be written");
+        }
+        let digits = self.room.strip_suffix(b".0").unwrap_or(&self.room);
+        self.writer.write_field(digits).expect("memory takes all that is written");
+    }
+
+    fn end(&mut self) {
+        self.writer.write_record(None::<&[u8]>).expect("rows of one table are of one length");
+    }
+
+    fn words(&mut self, words: impl Iterator<Item = String>) {
+        words.for_each(|word| self.word(&word));
+        self.end();
     }
 
     fn into_bytes(self) -> Vec<u8> {
-        self.0.into_inner().expect("memory takes all that is written")
+        self.writer.into_inner().expect("memory takes all that is written")
     }
 }
 
@@ -78,6 +105,15 @@ mod tests {
     use super::*;
     use crate::units::Dimension;
 
+    fn cell(value: Option<f64>) -> String {
+        let mut rows = Rows::new();
+        rows.word("");
+        rows.number(value);
+        rows.end();
+        let text = String::from_utf8(rows.into_bytes()).expect("it is UTF-8");
+        text.trim_end().trim_start_matches("\"\"").trim_start_matches(',').to_owned()
+    }
+
     #[test]
     fn every_number_reads_back_as_itself() {
         for value in [0.1, -0.0, 1.0 / 3.0, 1e-300, 6.022e23, 358.15, 1e-5, 9.999_999e-6, -2.5e17, f64::MIN_POSITIVE] {
@@ -85,6 +121,7 @@ mod tests {
         }
         assert_eq!(cell(Some(358.15)), "358.15");
         assert_eq!(cell(Some(40.0)), "40");
+        assert_eq!(cell(Some(-0.0)), "0");
         assert_eq!(cell(Some(2.5e-9)), "2.5e-9");
     }
 

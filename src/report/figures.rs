@@ -93,3 +93,34 @@ pub fn difference(dimension: Dimension) -> Dimension {
     }
     if dimension == Dimension::PRESSURE_LEVEL { Dimension::PRESSURE } else { dimension }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn shares_are_in_per_cent_and_what_is_no_share_is_bare() {
+        let ratio = |name: &str, value| shown(name, value, Dimension::RATIO);
+        assert_eq!(ratio("outlet.conversion", 0.42), "42 %");
+        assert_eq!(ratio("section.tube.outlet.dispersity.percentile_10", 0.98), "0.98");
+        assert_eq!(ratio("place.tap.velocity_ratio", 2.0), "2");
+        assert_eq!(ratio("section.tube.hot_spot.position", 0.5), "0.5");
+        assert_eq!(ratio("warnings.count", 1.0), "1");
+        assert_eq!(ratio("balance.energy", 1.234e-9), "1.2e-9");
+    }
+
+    #[test]
+    fn a_stress_is_no_pressure_in_bar() {
+        assert_eq!(shown("wall.highest_shear_stress", 52_555.0, Dimension::STRESS), "52.555 kPa");
+        assert_eq!(shown("outlet.wall_shear_stress", 11.9, Dimension::STRESS), "11.9 Pa");
+        assert_eq!(shown("pressure_drop", 52_555.0, Dimension::PRESSURE), "0.52555 bar");
+    }
+
+    #[test]
+    fn a_range_names_its_unit_once() {
+        let range = |from, to| range("outlet.temperature", from, to, Dimension::TEMPERATURE);
+        assert_eq!(range(358.15, 373.15), "85 to 100 degC");
+        let lengths = super::range("z", 0.02, 3.0, Dimension::LENGTH);
+        assert_eq!(lengths, "20 mm to 3 m");
+    }
+}

@@ -40,7 +40,7 @@ pub enum SpecError {
     // ---- format, parts, paths
     #[error("the file does not begin with its format")]
     NoFormat { at: Place, wanted: &'static str },
-    #[error("{} is not a format this file can have", typed(.found))]
+    #[error("{}", not_one_of("format this file can have", .found))]
     WrongFormat { at: Place, found: String, wanted: &'static str },
     #[error("`{found}` is newer than this version of axirad reads")]
     NewerFormat { at: Place, found: String },
@@ -66,7 +66,7 @@ pub enum SpecError {
     BothOf { at: Place, block: String, one: &'static str, other: &'static str },
     #[error("`{key}` needs {wanted}, but {found} stands here")]
     WrongShape { at: Place, key: String, wanted: &'static str, found: &'static str },
-    #[error("{} is not a kind of {what}", typed(.found))]
+    #[error("{}", not_one_of(&format!("kind of {what}"), .found))]
     UnknownKind { at: Place, what: &'static str, found: String, nearest: Option<String>, known: Vec<&'static str> },
     #[error("`{word}` is not a word for `{key}`")]
     UnknownWord { at: Place, key: String, word: String, nearest: Option<String>, known: Vec<&'static str> },
@@ -135,7 +135,7 @@ pub enum SpecError {
     Needs { at: Place, key: String, needs: String },
     #[error("`{key}` does not go with {with}")]
     DoesNotGoWith { at: Place, key: String, with: String },
-    #[error("the place lies at {z}, outside the {length} of `{of}`")]
+    #[error("the place lies at {z}, outside the {length} of {of}")]
     OutsideLength { at: Place, z: String, length: String, of: String },
     #[error("the equilibrium of reaction `{reaction}` shifts with {given}, but the reaction's own heat is {own}")]
     HeatsDiffer { at: Place, reaction: String, given: String, own: String },
@@ -156,9 +156,9 @@ pub(super) fn joined(words: &[impl AsRef<str>], joint: &str) -> String {
     }
 }
 
-/// What was typed in backquotes; `nothing` where no word stands.
-fn typed(text: &str) -> String {
-    if text.is_empty() { "nothing".to_owned() } else { format!("`{text}`") }
+/// What stands where one of several words is due.
+fn not_one_of(what: &str, found: &str) -> String {
+    if found.is_empty() { format!("no {what} stands here") } else { format!("`{found}` is not a {what}") }
 }
 
 /// What the values of a composition come to: shares of mass or moles, or of the volume.

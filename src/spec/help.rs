@@ -112,7 +112,7 @@ impl SpecError {
             // ---- the text
             Self::TooLarge { .. } => "a spec is typed by hand: is this the file that was meant?".into(),
             Self::NotUtf8 { .. } => "save the file as UTF-8: editors offer it beside the file's name".into(),
-            Self::Empty { .. } => "`axirad init` writes a spec to begin with".into(),
+            Self::Empty { .. } => "a spec begins with `format: axirad/1`".into(),
             Self::NotYaml { .. } => return None, // the reason says what to change
             Self::TooDeep { .. } => "no block of the format is nested so deep".into(),
             Self::TooMany { .. } => "aliases and `like` that name each other multiply: write out what is meant".into(),
@@ -124,7 +124,7 @@ impl SpecError {
             Self::KeyNotText { .. } => "write the key as one word, as in `mass_flow: 1 kg/h`".into(),
             Self::DuplicateKey { .. } => "leave one of the two out".into(),
             Self::NotFinite { .. } => "write a number; what has no value or no limit is left out".into(),
-            Self::Ambiguous { .. } => "put it in quotes, or put a blank after the sign it begins with".into(),
+            Self::Ambiguous { .. } => "put it in quotes".into(),
 
             // ---- format, parts, paths
             Self::NoFormat { wanted, .. } => format!("the first key must be `format: {wanted}`"),
@@ -152,9 +152,7 @@ impl SpecError {
             Self::NoneOf { keys, .. } => none_of(keys)?,
             Self::BothOf { one, other, .. } => format!("leave out `{one}` or `{other}`"),
             Self::WrongShape { key, wanted, found, .. } => wrong_shape(key, wanted, found)?,
-            Self::NotInThisVersion { .. } => {
-                "the format has it, a later version will read it; `axirad list kinds` shows what this one reads".into()
-            }
+            Self::NotInThisVersion { .. } => "it belongs to the format, but needs a later version of axirad".into(),
 
             // ---- values
             Self::Unit { error, .. } => error.help(),
@@ -175,7 +173,7 @@ impl SpecError {
             ),
             Self::NameTaken { name, .. } => format!("give one of the two another name, such as `{name}_2`"),
             Self::UnknownName { nearest: Some(nearest), .. } => do_you_mean(nearest),
-            Self::UnknownName { nearest: None, what, name, known, .. } => unknown_name(what, name, known),
+            Self::UnknownName { nearest: None, what, known, .. } => unknown_name(what, known),
             Self::LikeCircle { .. } => "write out the keys of one of them, without `like`".into(),
 
             // ---- meaning
@@ -238,15 +236,12 @@ impl SpecError {
             Self::NoneOf { .. } => "one is missing here".into(),
             Self::UnknownKey { .. } => "unknown key".into(),
             Self::CommaEndedText { .. } => "after a comma".into(),
-            Self::NoFormat { .. } => "before this".into(),
+            Self::NoFormat { at, .. } if at.path.0.is_empty() => "it is missing before this".into(),
+            Self::NoFormat { .. } => "it must stand before all else".into(),
             Self::DuplicateKey { .. } | Self::GivenTwice { .. } | Self::PropertyTwice { .. } => "again here".into(),
             Self::TwoRests { .. } => "the second".into(),
             Self::NameTaken { .. } => "the same name".into(),
             Self::MissingProperty { property, .. } => format!("has no `{property}`"),
-            Self::WrongShape { wanted, .. } => format!("{wanted} is due"),
-            Self::OutOfBounds { bound, .. } => format!("must be {bound}"),
-            Self::FractionAboveOne { .. } => "above 1".into(),
-            Self::NotWhole { .. } => "not whole".into(),
             Self::LengthsDiffer { wanted, .. } => format!("{wanted} are due"),
             _ => String::new(),
         }
@@ -266,7 +261,7 @@ fn known_words(before: &str, known: &[impl AsRef<str>], joint: &str) -> Option<S
 fn wrong_format(found: &str, wanted: &str) -> String {
     match (found, wanted) {
         ("axirad-part/1", "axirad/1") => "a part is read by the spec that includes it: `include: [FILE]`".into(),
-        ("axirad-study/1", "axirad/1") => "a study is read by `axirad screen`".into(),
+        ("axirad-study/1", "axirad/1") => "a study is no spec: take the file that it names as `base`".into(),
         ("axirad/1", "axirad-part/1") => {
             "only parts can be included: their first key is `format: axirad-part/1`".into()
         }
@@ -274,32 +269,37 @@ fn wrong_format(found: &str, wanted: &str) -> String {
     }
 }
 
-/// A comma inside braces ended a number or a text: the two put together again.
+/// A comma inside braces ended a number or a text: the pieces put together again.
 fn comma(at: &Place, key: &str) -> String {
     let text = &at.location.source.text;
-    let before = text.get(..at.location.bytes.start).unwrap_or_default();
+    let (before, from) = text.split_at(text.floor_char_boundary(at.location.bytes.start));
     let line = before.rsplit('\n').next().unwrap_or_default();
     let value = line.rsplit_once(": ").map_or("", |(_, value)| value.trim().trim_end_matches(',').trim_end());
     let is_number = value.parse::<i64>().is_ok();
     if is_number && key.starts_with(|c: char| c.is_ascii_digit()) {
         return do_you_mean(format!("{value}.{key}"));
     }
-    if value.is_empty() || value.len() + key.len() > LONGEST_QUOTED || value.contains(['"', '\\']) {
-        return "put the text in quotes: `\"one, two\"`".into();
+    let rest = from.lines().next().unwrap_or_default().split(['}', '{', '#']).next().unwrap_or_default();
+    let pieces: Vec<&str> = rest.split(',').map(str::trim).take_while(|piece| !piece.contains(": ")).collect();
+    let whole = format!("{value}, {}", pieces.join(", "));
+    if value.is_empty() || whole.len() > LONGEST_QUOTED || whole.contains(['"', '\\']) {
+        return "put the text in quotes, as in `note: \"one, two\"`".into();
     }
-    format!("put the text in quotes: `\"{value}, {key}\"`")
+    format!("put the text in quotes: `\"{}\"`", whole.trim_end_matches([',', ' ']))
 }
 
 fn wrong_shape(key: &str, wanted: &str, found: &str) -> Option<String> {
     Some(match () {
-        () if wanted.starts_with("temperatures") => "such as `{20 degC: 867 kg/m3, 60 degC: 829 kg/m3}`".into(),
+        () if wanted.contains("such as") => return None,
+        () if wanted.starts_with("temperatures") => {
+            format!("such as `{key}: {{20 degC: 867 kg/m3, 60 degC: 829 kg/m3}}`")
+        }
         () if wanted.starts_with("a list of numbers") => format!("such as `{key}: [0, 2.57, 9.56]`, with their units"),
         () if wanted.starts_with("a list of files") => format!("such as `{key}: [materials/styrene.yaml]`"),
-        () if found == "nothing" => format!("write it after `{key}:`, or leave the key out"),
-        () if wanted == "a value" => format!("write the value itself after `{key}:`"),
         () if wanted.starts_with("a list") => "begin each item with `- `, under the key".into(),
-        () if wanted.contains("such as") => return None,
         () if wanted.starts_with("a block") => format!("write keys under it, or in one line: `{key}: {{KEY: VALUE}}`"),
+        () if found == "nothing" => format!("write it after `{key}:`"),
+        () if wanted == "a value" => format!("write the value itself after `{key}:`"),
         () => return None,
     })
 }
@@ -313,6 +313,7 @@ fn none_of(keys: &[&'static str]) -> Option<String> {
         "activation_energy" => {
             "such as `activation_energy: 75 kJ/mol`; what is the same at any temperature has `kind: constant`"
         }
+        "at_least" => "such as `at_least: 20 %`, in the unit of the quantity",
         "by_combination" => "termination of two radicals makes one chain (`by_combination`), two, or both",
         _ => return None,
     };
@@ -367,11 +368,10 @@ fn name_like(typed: &str) -> Option<String> {
 }
 
 /// Where what is named is defined, and what there is.
-fn unknown_name(what: &str, name: &str, known: &[String]) -> String {
+fn unknown_name(what: &str, known: &[String]) -> String {
     let define = match what {
-        "quantity" => return "`axirad list quantities` shows all".into(),
-        "warning" => return "`axirad list warnings` shows all".into(),
-        "species" => format!("define it under `species`, as `{name}: {{formula: C8H8}}`"),
+        "quantity" => return "quantities are named as `axirad run --verbose` names them".into(),
+        "species" => "define it under `species`".into(),
         "wall" => "define it under `walls`, or write a block: `wall: {kind: insulated}`".into(),
         "coolant" => "define it under `coolants`, or write a block: `coolant: {temperature: 110 degC}`".into(),
         _ => String::new(),
@@ -382,19 +382,19 @@ fn unknown_name(what: &str, name: &str, known: &[String]) -> String {
         [_, _, ..] => known_words("there are", known, "and").unwrap_or_default(),
     };
     let parts: Vec<&str> = [there.as_str(), define.as_str()].into_iter().filter(|part| !part.is_empty()).collect();
-    if parts.is_empty() { format!("no {what} is defined") } else { parts.join("; ") }
+    if parts.is_empty() { format!("no {what} is defined") } else { parts.join("; or ") }
 }
 
 fn missing_property(property: &str) -> String {
     let example = match property {
-        "molar_mass" => return "add `formula: C8H8` or `molar_mass: 104.15 g/mol`, with its own value".into(),
+        "molar_mass" => return "such as `molar_mass: 104.15 g/mol`, or `formula: C8H8`".into(),
         "density" => "900 kg/m3",
         "heat_capacity" => "1.9 kJ/(kg K)",
         "conductivity" => "0.13 W/(m K)",
         "diffusivity" => "1e-9 m2/s",
         _ => return format!("add `{property}`"),
     };
-    format!("add `{property}: {example}`, with its own value")
+    format!("such as `{property}: {example}`; in `mixture` it holds for the whole fluid")
 }
 
 #[cfg(test)]
@@ -431,11 +431,11 @@ mod tests {
 
     #[test]
     fn a_comma_gives_back_the_number_or_the_text_it_ended() {
-        let text = "feed: {mass_flow: 1,5 kg/h}\nlaw: {source: Hui (1972), J. Appl. Polym. Sci., x: 1}\n";
+        let text = "feed: {mass_flow: 1,5 kg/h}\nlaw: {source: Hui (1972), J. Appl. Polym. Sci., 749, x: 1}\n";
         assert_eq!(comma(&place(text, "5 kg/h"), "5 kg/h"), "do you mean `1.5 kg/h`?");
         let quoted = comma(&place(text, "J. Appl. Polym. Sci."), "J. Appl. Polym. Sci.");
-        assert_eq!(quoted, "put the text in quotes: `\"Hui (1972), J. Appl. Polym. Sci.\"`");
-        assert_eq!(comma(&place(text, "feed"), "feed"), "put the text in quotes: `\"one, two\"`");
+        assert_eq!(quoted, "put the text in quotes: `\"Hui (1972), J. Appl. Polym. Sci., 749\"`");
+        assert_eq!(comma(&place(text, "feed"), "feed"), "put the text in quotes, as in `note: \"one, two\"`");
     }
 
     #[test]

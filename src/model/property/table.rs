@@ -63,7 +63,7 @@ impl Table {
     fn through(points: &[(f64, f64)]) -> Self {
         let widths: Vec<f64> = points.windows(2).map(|p| p[1].0 - p[0].0).collect();
         let secants: Vec<f64> = points.windows(2).map(|p| (p[1].1 - p[0].1) / (p[1].0 - p[0].0)).collect();
-        let slopes = slopes(&widths, &secants);
+        let slopes = monotone_slopes(&widths, &secants);
         let piece = |k: usize| {
             let (h, d, m, n) = (widths[k], secants[k], slopes[k], slopes[k + 1]);
             Piece {
@@ -123,7 +123,8 @@ impl Table {
 }
 
 /// Slopes at the points: weighted harmonic means, 0 at an extremum; one-sided and held at the ends.
-fn slopes(widths: &[f64], secants: &[f64]) -> Vec<f64> {
+#[must_use]
+pub fn monotone_slopes(widths: &[f64], secants: &[f64]) -> Vec<f64> {
     let n = secants.len();
     if n == 1 {
         return vec![secants[0]; 2];
