@@ -14,4 +14,4 @@ pub mod profile;
 pub mod rhs;
 pub mod spline;
 pub mod terms;
-mod tubes;
+pub mod tubes;

@@ -91,7 +91,7 @@ impl Tubes<'_> {
     }
 
     /// The laws as the standard library's functions compute them: on processors without such vectors.
-    fn one_by_one(&self, room: &mut TubeRoom, profile: &mut Profile) {
+    pub fn one_by_one(&self, room: &mut TubeRoom, profile: &mut Profile) {
         let Self { material, layout, state, .. } = *self;
         for i in 0..layout.n_tubes {
             let tube = &state[layout.tube(i)];
@@ -128,44 +128,5 @@ impl Tubes<'_> {
     fn store_transport(&self, i: usize, k: usize, transport: f64, profile: &mut Profile) {
         let mobilities = profile.transport.len() / self.layout.n_tubes;
         profile.transport[i * mobilities + k] = transport;
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-    use crate::simulate::read_spec;
-    use approx::assert_relative_eq;
-
-    #[test]
-    fn tubes_side_by_side_are_what_they_are_one_by_one() {
-        let bytes = std::fs::read("specs/cases/case_c.yaml").expect("the case is there");
-        let mut read = |part: &str| std::fs::read(part).map_err(|error| error.to_string());
-        let sets = ["numerics.stream_tubes=13".to_owned()];
-        let spec = read_spec("specs/cases/case_c.yaml", &bytes, &mut read, &sets).expect("a valid spec");
-        let material = &spec.plant.material;
-        let layout = Layout::new(material, 13);
-        let mut state = layout.uniform(&spec.plant.feed.state);
-        for (i, value) in state.iter_mut().enumerate() {
-            *value *= 1.0 - 1e-3 * (i % 97) as f64;
-        }
-        let flows = vec![1e-6; 13];
-        let tubes = Tubes { material, layout: &layout, flows: &flows, state: &state };
-        let mut room = TubeRoom::new(material);
-        let mut profiles = [Profile::new(material, &layout), Profile::new(material, &layout)];
-        tubes.evaluate(&mut room, &mut profiles[0]);
-        tubes.one_by_one(&mut room, &mut profiles[1]);
-        let [fast, plain] = &profiles;
-        // a handful of exponentials, each good to three units in the last place, with exponents up to 40
-        for (a, b) in fast.sources.iter().zip(&plain.sources) {
-            assert_relative_eq!(a, b, max_relative = 1e-13);
-        }
-        for (a, b) in fast.viscosities.iter().zip(&plain.viscosities) {
-            assert_relative_eq!(a, b, max_relative = 1e-13);
-        }
-        assert_eq!(fast.transport.len(), plain.transport.len());
-        for (a, b) in fast.transport.iter().zip(&plain.transport) {
-            assert_relative_eq!(a, b, max_relative = 1e-14);
-        }
     }
 }

@@ -302,9 +302,12 @@ impl<'a> Block<'a> {
 
     /// Notes where the numbers of this block come from.
     pub fn trace(&self) {
+        let entries = self.node().entries().unwrap_or_default();
+        let is_changed = entries.iter().any(|entry| entry.node.origin != Origin::File);
         let (source, confirmed) = match &self.source {
-            Some(given) => (Some(given.text.clone()), given.confirmed),
-            None => (None, true),
+            // a number put in by `--set` or `override` does not come from the source of those it stands among
+            Some(given) if !is_changed => (Some(given.text.clone()), given.confirmed),
+            _ => (None, true),
         };
         let path = self.path.clone();
         self.reader.trace(self.order.clone(), Provenance { path, source, confirmed });
