@@ -122,7 +122,7 @@ fn is_unit(text: &str) -> bool {
 
 /// Whether some key of the format takes this value.
 fn is_quantity(text: &str) -> bool {
-    let second_order = Dimension::rate_constant(2.0);
+    let rates = [0.0, 0.5, 1.0, 1.5, 2.0, 3.0].map(Dimension::rate_constant);
     let all = [
         Dimension::RATIO,
         Dimension::ANGLE,
@@ -145,9 +145,8 @@ fn is_quantity(text: &str) -> bool {
         Dimension::VISCOSITY,
         Dimension::FREQUENCY,
         Dimension::DENSITY_SLOPE,
-        second_order,
     ];
-    all.into_iter().any(|dimension| units::read(text, dimension).is_ok())
+    all.into_iter().chain(rates).any(|dimension| units::read(text, dimension).is_ok())
 }
 
 /// All wrong specs, read.

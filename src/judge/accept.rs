@@ -3,7 +3,7 @@
 use crate::model::plant::Plant;
 use crate::results::catalogue::{Slot, slots};
 use crate::results::{Figure, Value};
-use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes, unknown_name};
+use crate::spec::{About, Block, Bound, Key, Need, Place, Reported, SpecError, Takes, unknown_name};
 use crate::units::{self, Dimension};
 
 /// The bounds of one quantity.
@@ -106,7 +106,7 @@ impl Limit {
             let _ = block.refuse(block.wrong_shape("accept", "a block of quantities with bounds"));
         }
         for (name, location, item) in block.keyed() {
-            let at = crate::spec::Place { location, path: item.path().clone() };
+            let at = Place { location, path: item.path().clone() };
             let found = known.iter().find(|slot| slot.name == name);
             let read = match found {
                 Some(slot) => read_one(&item, name, Some(slot)),
@@ -116,8 +116,7 @@ impl Limit {
                     let error = if is_later {
                         SpecError::NotInThisVersion { at, what: format!("accept.{name}") }
                     } else {
-                        let names: Vec<String> = known.iter().map(|slot| slot.name.clone()).collect();
-                        unknown_name(at, "quantity", name, &names)
+                        unknown_quantity(at, name, &known)
                     };
                     Err(block.refuse(error))
                 }
@@ -170,6 +169,22 @@ impl Limit {
     }
 }
 
+/// The mistake that no quantity has this name: one that ends or begins like it is proposed first.
+fn unknown_quantity(at: Place, name: &str, known: &[Slot]) -> SpecError {
+    let names: Vec<String> = known.iter().map(|slot| slot.name.clone()).collect();
+    let alike = names
+        .iter()
+        .find(|known| known.strip_suffix(name).is_some_and(|before| before.ends_with('.')))
+        .or_else(|| names.iter().find(|known| known.strip_prefix(name).is_some_and(|after| after.starts_with('.'))))
+        .cloned();
+    match (unknown_name(at, "quantity", name, &names), alike) {
+        (SpecError::UnknownName { at, what, name, known, .. }, Some(alike)) => {
+            SpecError::UnknownName { at, what, name, nearest: Some(alike), known }
+        }
+        (error, _) => error,
+    }
+}
+
 fn read_one(block: &Block<'_>, name: &str, slot: Option<&Slot>) -> Result<Vec<Limit>, Reported> {
     let dimension = slot.map_or(Dimension::RATIO, |slot| slot.dimension);
     let fields = block.open_for(&ABOUT, dimension);
@@ -182,6 +197,14 @@ fn read_one(block: &Block<'_>, name: &str, slot: Option<&Slot>) -> Result<Vec<Li
         because: because.clone(),
         needs_whole_run: slot.is_none_or(Slot::needs_whole_run),
     };
+    for key in ["at_least", "at_most"] {
+        let bound = fields.optional_quantity(key).unwrap_or(0.0);
+        if slot.is_some_and(Slot::is_fraction) && bound > 1.0 {
+            let at = fields.place_of(key);
+            let text = at.location.source.text[at.location.bytes.clone()].to_owned();
+            fields.problem(SpecError::FractionAboveOne { at, key: key.to_owned(), text });
+        }
+    }
     let mut limits = Vec::new();
     limits.extend(fields.optional_quantity("at_least").map(Bar::AtLeast).map(make));
     limits.extend(fields.optional_quantity("at_most").map(Bar::AtMost).map(make));

@@ -9,6 +9,10 @@ use crate::units::{self, Dimension};
 
 /// A radical's lifetime in doubt from this share of the residence time (model page, §8; our choice).
 const LIFETIME_SHARE: f64 = 0.01;
+/// Laminar flow in a tube is in doubt from this Reynolds number (model page, §8).
+const LAMINAR: f64 = 2100.0;
+/// Largest velocity over the mean from which a core channels through the rest: five times a parabola's (our choice).
+const CHANNEL: f64 = 10.0;
 /// Mass, elements and monomer units close to rounding; this is a hundred times what a long run gathers.
 const ROUNDING: f64 = 1e-10;
 /// The energy balance closes to this many times the relative tolerance.
@@ -42,6 +46,26 @@ pub const CODES: &[WarningAbout] = &[
     WarningAbout {
         code: "hot_spot_at_end",
         about: "the hottest point lies at the end of the reactor: it may be hotter beyond, lengthen the last section",
+    },
+    WarningAbout {
+        code: "not_laminar",
+        about: "the Reynolds number passes 2100, where laminar flow in a tube is in doubt: none of the figures holds for \
+                turbulent flow",
+    },
+    WarningAbout {
+        code: "channelling",
+        about: "the fluid runs as a fast core through a layer that hardly moves: the layer is thinner or thicker by the \
+                grid, and so are the figures; use more stream tubes, and doubt the design before the program",
+    },
+    WarningAbout {
+        code: "rising_viscosity",
+        about: "the viscosity rises with temperature at the feed, as no simple fluid's does: the law that falls is \
+                `andrade`, `arrhenius` rises",
+    },
+    WarningAbout {
+        code: "endothermic_polymerization",
+        about: "the heat of polymerization is positive, so the reaction cools: polymerizations set heat free, and \
+                their heat is negative",
     },
     WarningAbout {
         code: "balance",
@@ -103,6 +127,8 @@ pub fn warnings(
 ) -> Vec<Warning> {
     let mut found: Vec<(&'static str, String)> = read.iter().map(|w| (w.code, w.text.clone())).collect();
     found.extend(laws_out_of_range(run).into_iter().map(|text| ("law_range", text)));
+    found.extend(turbulence(run).map(|text| ("not_laminar", text)));
+    found.extend(channelling(run).map(|text| ("channelling", text)));
     found.extend(slow_radicals(run).map(|text| ("quasi_steady_radicals", text)));
     if hot_spot.note.is_some_and(|note| note.contains("end")) && run.is_complete() {
         let text = format!("the hottest point lies at the end, z = {:.4} m", hot_spot.z);
@@ -136,6 +162,33 @@ fn laws_out_of_range(run: &RunView<'_>) -> Vec<String> {
         })
     };
     run.plant.material.ranges().into_iter().filter_map(outside).collect()
+}
+
+/// The largest Reynolds number, 8 ρ ū²/τ_w, where it passes the laminar bound.
+///
+/// Source: Metzner and Reed (1955), AIChE J. 1, 434 (from memory); ρūD/η for a Newtonian fluid.
+fn turbulence(run: &RunView<'_>) -> Option<String> {
+    let reynolds = |station: &StationView<'_>| {
+        let velocity = station.profile.mean_velocity();
+        let stress = station.wall_shear_stress().filter(|stress| *stress > 0.0)?;
+        Some((8.0 * station.profile.mean_density() * velocity * velocity / stress, station.z))
+    };
+    let (largest, z) = run.stations().filter_map(reynolds).max_by(|a, b| a.0.total_cmp(&b.0))?;
+    (largest > LAMINAR).then(|| format!("the Reynolds number is {largest:.0} at z = {z:.4} m, above {LAMINAR}"))
+}
+
+/// The largest velocity over the mean, where the fluid runs as a core through a layer at the wall.
+fn channelling(run: &RunView<'_>) -> Option<String> {
+    let ratio = |station: &StationView<'_>| {
+        let largest = station.profile.geometry.velocities.iter().copied().fold(0.0, f64::max);
+        (largest / station.profile.mean_velocity(), station.z)
+    };
+    let (largest, z) = run.stations().map(ratio).max_by(|a, b| a.0.total_cmp(&b.0))?;
+    (largest > CHANNEL).then(|| {
+        format!(
+            "the largest velocity is {largest:.0} times the mean at z = {z:.4} m: the layer at the wall hardly moves"
+        )
+    })
 }
 
 /// The longest lifetime of a radical, where it is a large share of the residence time.

@@ -13,10 +13,13 @@ use super::output::{self, Output};
 use super::section::{self, Section};
 use super::species::{self, Species, SpeciesList};
 use super::wall::{self, coolant, coolant::Coolants};
-use crate::spec::{Block, Fields, Key, Need, Reported, SpecError, Takes};
+use crate::spec::{Block, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes};
+use crate::units::{self, Dimension};
 
 /// ε of a concentration to a power that is not whole, as a share of the feed's total (model page, §6).
 const POWER_SHARE: f64 = 1e-6;
+/// Viscosities of fluids, in Pa s: from a gas to rock that creeps.
+const FLUID: (f64, f64) = (1e-7, 1e15);
 /// Species given by concentration fill the volume to within this: they are typed with six digits.
 const VOLUME_TOLERANCE: f64 = 1e-6;
 
@@ -179,6 +182,7 @@ impl Plant {
         let (limits, numerics) = (limits.ok_or(Reported)?, numerics.ok_or(Reported)?);
         check_feed_within_limits(fields, &feed, &limits);
         check_limits_apply(fields, &material, &feed);
+        check_feed_viscosity(fields, &material, &feed);
         if !top.reader().is_clean() {
             return Err(Reported);
         }
@@ -408,6 +412,36 @@ fn check_closing(block: &Block<'_>) -> Result<(), Reported> {
     Err(block.refuse(SpecError::DoesNotGoWith { at, key, with }))
 }
 
+/// A viscosity that no fluid has at the feed, or that rises with temperature, is a slip of the pen.
+fn check_feed_viscosity(fields: &Fields<'_>, material: &Material, feed: &Feed) {
+    if !material.mixture.has_viscosity() {
+        return;
+    }
+    let mut fractions = vec![0.0; material.n_components()];
+    let mut at = |warmer: f64| {
+        let mut state = feed.state.clone();
+        state[material.n_amounts()] += warmer;
+        material.fractions(&state, &mut fractions);
+        material.mixture.viscosity(&material.fluid(&state, &fractions))
+    };
+    let (here, warmer) = (at(0.0), at(10.0));
+    let place = || {
+        fields.child("mixture").map_or_else(
+            || fields.block().place(),
+            |m| m.child_of("viscosity").map_or_else(|| m.place(), |v| v.place()),
+        )
+    };
+    let show = |value| units::write(value, Dimension::VISCOSITY);
+    if !(FLUID.0..=FLUID.1).contains(&here) {
+        let needs =
+            format!("a law that gives a fluid: at the feed it comes to {here:.3e} Pa s; look at its units and powers");
+        fields.problem(SpecError::Needs { at: place(), key: "mixture.viscosity".to_owned(), needs });
+    } else if warmer > here {
+        let text = format!("the viscosity rises from {} at the feed to {} 10 K above it", show(here), show(warmer));
+        fields.block().reader().warn(ReadWarning { code: "rising_viscosity", text, at: place() });
+    }
+}
+
 /// A limit on what the run does not have would be read and ignored.
 fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed: &Feed) {
     let Some(limits) = fields.child("limits") else { return };
@@ -427,10 +461,18 @@ fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed: &Feed) {
 
 fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits: &Limits) {
     let temperature = feed.temperature();
-    if temperature < limits.lowest_temperature || temperature > limits.highest_temperature {
-        let (at, key) = (fields.place_of("feed"), "feed.temperature".to_owned());
-        let needs = "to lie within `limits.temperature`".to_owned();
-        fields.problem(SpecError::Needs { at, key, needs });
+    let outside = temperature < limits.lowest_temperature || temperature > limits.highest_temperature;
+    if outside {
+        let show = |value| units::write(value, Dimension::TEMPERATURE);
+        let place = fields.child("feed").and_then(|feed| feed.child_of("temperature")).map(|child| child.place());
+        let needs = format!(
+            "to lie within `limits.temperature`, {} to {}, but is {}",
+            show(limits.lowest_temperature),
+            show(limits.highest_temperature),
+            show(temperature)
+        );
+        let at = place.unwrap_or_else(|| fields.place_of("feed"));
+        fields.problem(SpecError::Needs { at, key: "feed.temperature".to_owned(), needs });
     }
     if let Some(pressure) = feed.pressure
         && pressure < limits.lowest_pressure

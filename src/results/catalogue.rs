@@ -230,6 +230,17 @@ impl Slot {
         }
     }
 
+    /// Whether its value lies between 0 and 1.
+    #[must_use]
+    pub fn is_fraction(&self) -> bool {
+        const FRACTIONS: [&str; 4] = ["conversion", "mass_fraction", "polymer_mass_fraction", "hot_spot.position"];
+        let quantity = match &self.kind {
+            SlotKind::State { quantity, .. } | SlotKind::Run { quantity, .. } => quantity,
+            SlotKind::CoolantTemperature(_) | SlotKind::CoolantHeat(_) | SlotKind::Ended => return false,
+        };
+        FRACTIONS.iter().any(|fraction| quantity.name.starts_with(fraction)) || quantity.name == "hot_spot.conversion"
+    }
+
     /// Whether its value is a word.
     #[must_use]
     pub fn is_word(&self) -> bool {

@@ -6,8 +6,8 @@ use super::rate_constant::{self, RateConstant};
 use super::reaction::{HEAT, read_heat};
 use crate::model::property::KIND;
 use crate::model::species::SpeciesList;
-use crate::spec::{About, Block, Bound, Fields, Key, Need, Reported, SpecError, Takes, unknown_name};
-use crate::units::Dimension;
+use crate::spec::{About, Block, Bound, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes, unknown_name};
+use crate::units::{self, Dimension};
 
 pub const ABOUT: About = About {
     kind: "free_radical",
@@ -262,6 +262,12 @@ impl FreeRadical {
                 f64::NAN
             })
         });
+        if let Some(heat) = heat.filter(|heat| *heat > 0.0) {
+            let text =
+                format!("the heat of polymerization is {}, so it cools", units::write(heat, Dimension::MOLAR_ENERGY));
+            let code = "endothermic_polymerization";
+            block.reader().warn(ReadWarning { code, text, at: fields.place_of("heat") });
+        }
         fields.finish(())?;
         Ok(Self {
             monomer: monomer.ok_or(Reported)?,
@@ -366,6 +372,13 @@ fn read_transfer(fields: &Fields<'_>, species: &SpeciesList, polymer: Option<usi
             continue;
         }
         let known = known_species(fields, &item, name, species);
+        if item.node().number().is_some() {
+            let (at, key) = (item.place(), name.to_owned());
+            let needs =
+                "a unit, such as `0.3 m3/(mol s)`, or `{ratio: 4e-5}` where it is a ratio to propagation".to_owned();
+            fields.problem(SpecError::Needs { at, key, needs });
+            continue;
+        }
         let law = if item.node().get("ratio").is_some() {
             let ratio = item.open(&RATIO);
             let value = ratio.quantity("ratio");

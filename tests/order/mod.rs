@@ -1,0 +1,4 @@
+//! Does the error fall as claimed: with the square of the tubes' width, and with the integrator's tolerance?
+
+mod grid;
+mod tolerance;
