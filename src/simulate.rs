@@ -235,8 +235,9 @@ pub fn run(spec: &Spec, with_tables: bool) -> Result<Run, NumericsError> {
     #[expect(clippy::cast_precision_loss, reason = "warnings are few")]
     let count = Value::Number(open as f64);
     figures.push(Figure { name: accept::WARNINGS_COUNT.to_owned(), dimension: Dimension::RATIO, value: count });
-    let accept = spec.accept.iter().map(|limit| limit.judge(&figures, view.is_complete())).collect();
     let station = view.end();
+    let ended_in = (!view.is_complete()).then_some(station.leg.system.section.name.as_str());
+    let accept = spec.accept.iter().map(|limit| limit.judge(&figures, ended_in)).collect();
     let end = End {
         limit: trajectory.ended().map(|limit| limit.path()),
         section: station.leg.system.section.name.clone(),

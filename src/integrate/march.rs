@@ -68,7 +68,7 @@ pub fn march(system: &System<'_>, inlet: Vec<f64>, limits: Vec<Limit>, targets: 
         z: 0.0,
         step: 0.0,
         temperatures: temperatures(system, &inlet),
-        reason: error.to_string(),
+        reason: in_words(error),
     };
     let equations = Equations::new(system, inlet.clone(), limits);
     let mut problem = OdeBuilder::<BlockTridiagonal>::new()
@@ -110,6 +110,18 @@ pub fn march(system: &System<'_>, inlet: Vec<f64>, limits: Vec<Limit>, targets: 
         error_failures: statistics.number_of_error_test_failures,
     };
     Ok(Leg { stations: recorder.stations, peaks: recorder.peaks, ended, work })
+}
+
+/// What the integrator says, in words of the reactor.
+fn in_words(error: &DiffsolError) -> String {
+    let said = error.to_string();
+    let known = [
+        ("Step size is too small", "the steps along z became too small to go on"),
+        ("nonlinear solver fail", "the iteration for the next step did not converge"),
+        ("error test fail", "no step was small enough for the tolerance"),
+        ("number of", "the steps along z became too many"),
+    ];
+    known.iter().find(|(part, _)| said.contains(part)).map_or(said, |(_, words)| (*words).to_owned())
 }
 
 /// Lowest and highest temperature of the stream tubes, in K.
@@ -156,32 +168,34 @@ impl<'r, 'p> Recorder<'r, 'p> {
         reason: &OdeSolverStopReason<f64>,
     ) -> Result<Option<End>, DiffsolError> {
         let here = solver.state().t;
-        let end = match reason {
+        let start = self.before[1].0;
+        let found = match reason {
             OdeSolverStopReason::RootFound(z, _) => Some(*z),
-            OdeSolverStopReason::TstopReached | OdeSolverStopReason::InternalTimestep => None,
+            OdeSolverStopReason::TstopReached | OdeSolverStopReason::InternalTimestep => {
+                // an event function that begins at exactly 0 never changes its sign
+                let at_end = self.state_at(solver, here)?;
+                let is_left = self.limits.iter().any(|limit| limit.distance(self.system, &at_end) < 0.0);
+                if is_left { Some(self.crossing(solver, start, here)?) } else { None }
+            }
         };
-        let last = end.unwrap_or(here);
+        let last = found.unwrap_or(here);
         let at_last = self.state_at(solver, last)?;
-        let crossed = self.follow_peak(solver, last, hottest(self.system, &at_last))?;
-        let last = crossed.map_or(last, |z| z.min(last));
+        let crossed = self.follow_peak(solver, last, hottest(self.system, &at_last))?.or(found);
+        let last = crossed.unwrap_or(here);
         while let Some(z) = self.targets.get(self.next).copied().filter(|z| *z <= last) {
             let state = self.state_at(solver, z)?;
             self.stations.push(Station { z, state });
             self.next += 1;
         }
-        let ended = match reason {
-            _ if crossed.is_some() || end.is_some() => {
-                let state = self.state_at(solver, last)?;
-                let limit = self.left(&state);
-                if self.stations.last().is_none_or(|station| station.z < last) {
-                    self.stations.push(Station { z: last, state });
-                }
-                Some(Some(limit))
-            }
-            OdeSolverStopReason::TstopReached => Some(None),
-            OdeSolverStopReason::InternalTimestep | OdeSolverStopReason::RootFound(..) => None,
-        };
-        Ok(ended)
+        if crossed.is_some() {
+            let state = self.state_at(solver, last)?;
+            let limit = self.left(&state);
+            self.stations.retain(|station| station.z < last);
+            self.peaks.retain(|peak| peak.z <= last);
+            self.stations.push(Station { z: last, state });
+            return Ok(Some(Some(limit)));
+        }
+        Ok(matches!(reason, OdeSolverStopReason::TstopReached).then_some(None))
     }
 
     /// The limit that a state is nearest to, or farthest beyond.
@@ -197,7 +211,7 @@ impl<'r, 'p> Recorder<'r, 'p> {
     }
 
     /// Finds a local maximum along z of the hottest temperature between the ends of the last three steps.
-    /// Tells where the highest temperature was passed, if it was between two steps that are both below it.
+    /// Tells where a limit was left, if it was between two steps that both keep it.
     fn follow_peak(&mut self, solver: &Solver<'_, '_, '_>, z: f64, value: f64) -> Result<Option<f64>, DiffsolError> {
         let [first, middle] = self.before;
         self.before = [middle, (z, value)];
@@ -225,35 +239,30 @@ impl<'r, 'p> Recorder<'r, 'p> {
         }
         let top = 0.5 * (low + high);
         let state = self.state_at(solver, top)?;
-        let crossed = self.crossing(solver, first.0, top, &state)?;
+        let is_left = self.limits.iter().any(|limit| limit.distance(self.system, &state) < 0.0);
+        let crossed = if is_left { Some(self.crossing(solver, first.0, top)?) } else { None };
         self.peaks.push(Station { z: top, state });
         Ok(crossed)
     }
 
-    /// The place before a peak at which the highest temperature was passed, by bisection.
+    /// The place between one inside all limits and one beyond some at which the first was left, by bisection.
     fn crossing(
         &mut self,
         solver: &Solver<'_, '_, '_>,
         mut inside: f64,
         mut outside: f64,
-        at_peak: &[f64],
-    ) -> Result<Option<f64>, DiffsolError> {
-        let is_highest = |limit: &&Limit| matches!(limit, Limit::HighestTemperature(_));
-        let Some(limit) = self.limits.iter().find(is_highest).copied() else { return Ok(None) };
-        if limit.distance(self.system, at_peak) >= 0.0 {
-            return Ok(None);
-        }
+    ) -> Result<f64, DiffsolError> {
         let tolerance = PLACE_TOLERANCE * self.system.section.length;
         while outside - inside > tolerance {
             let middle = 0.5 * (inside + outside);
             let state = self.state_at(solver, middle)?;
-            if limit.distance(self.system, &state) < 0.0 {
+            if self.limits.iter().any(|limit| limit.distance(self.system, &state) < 0.0) {
                 outside = middle;
             } else {
                 inside = middle;
             }
         }
-        Ok(Some(inside))
+        Ok(inside)
     }
 }
 

@@ -33,7 +33,9 @@ impl Limit {
             Self::LowestTemperature(limits.lowest_temperature),
             Self::HighestTemperature(limits.highest_temperature),
         ];
-        if let Some(at_inlet) = pressure {
+        if let Some(at_inlet) = pressure
+            && system.material().mixture.has_viscosity()
+        {
             all.push(Self::LowestPressure { at_inlet, lowest: limits.lowest_pressure });
         }
         if limits.highest_viscosity.is_finite() && system.material().mixture.has_viscosity() {

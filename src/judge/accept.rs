@@ -129,9 +129,11 @@ impl Limit {
         if failed { Err(Reported) } else { Ok(limits) }
     }
 
-    /// Holds the bound against the figures of a run.
+    /// Holds the bound against the figures of a run; `ended_in` is the section in which a limit ended it.
     #[must_use]
-    pub fn judge(&self, figures: &[Figure], complete: bool) -> Judged {
+    pub fn judge(&self, figures: &[Figure], ended_in: Option<&str>) -> Judged {
+        let is_cut_short = ended_in
+            .is_some_and(|section| self.needs_whole_run || self.quantity.starts_with(&format!("section.{section}.")));
         let figure = figures.iter().find(|figure| figure.name == self.quantity);
         let value = figure.map_or_else(|| Value::Missing("it was not computed".to_owned()), |f| f.value.clone());
         let holds = match (&self.bound, &value) {
@@ -145,9 +147,7 @@ impl Limit {
         };
         let verdict = match holds {
             Ok(false) => Verdict::Broken,
-            Ok(true) if self.needs_whole_run && !complete => {
-                Verdict::NotJudged("the run did not reach the outlet".to_owned())
-            }
+            Ok(true) if is_cut_short => Verdict::NotJudged("the run did not reach the outlet".to_owned()),
             Ok(true) => Verdict::Holds,
             Err(reason) => Verdict::NotJudged(reason),
         };

@@ -103,11 +103,11 @@ pub const POLYMER: About = About {
 /// How much flows.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Amount {
-    ///, in kg/s.
+    /// By mass, in kg/s.
     MassFlow(f64),
-    ///, in m³/s.
+    /// By volume, in m³/s.
     VolumeFlow(f64),
-    ///, in m/s.
+    /// By velocity, in m/s.
     MeanVelocity(f64),
 }
 

@@ -42,15 +42,13 @@ pub const ABOUT: About = About {
     ],
 };
 
-const LOWEST_OR_HIGHEST: &str = "";
-
 macro_rules! bound_block {
     ($name:ident, $kind:literal, $(($key:literal, $dimension:expr, $bound:expr, $need:expr, $meaning:literal)),+) => {
         #[doc = concat!("Limits of ", $kind, ".")]
         pub const $name: About = About {
             kind: $kind,
             summary: concat!("limits of ", $kind),
-            equation: LOWEST_OR_HIGHEST,
+            equation: "",
             source: "",
             keys: &[$(Key { name: $key, takes: Takes::Quantity($dimension, $bound), need: $need, meaning: $meaning }),+],
         };

@@ -253,8 +253,8 @@ impl MixtureBlock {
         let grouped = |laws: Option<Vec<Property>>| {
             laws.map_or_else(|| Shared::of_all(Property::constant(0.0), n), Shared::grouped)
         };
-        let viscosity_range = self.viscosity.as_ref().and_then(Viscosity::range);
-        ranges.extend(viscosity_range.map(|range| ("mixture.viscosity".to_owned(), range)));
+        let of_viscosity = self.viscosity.as_ref().map(Viscosity::ranges).unwrap_or_default();
+        ranges.extend(of_viscosity.into_iter().map(|(key, range)| (format!("mixture.viscosity{key}"), range)));
         Ok(Mixture {
             density: grouped(density),
             heat_capacity: grouped(heat_capacity),

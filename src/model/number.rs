@@ -60,7 +60,10 @@ pub trait Number:
     /// ½(x + √(x² + δ²)): x where it is positive, smoothly near 0 below it.
     #[must_use]
     fn smooth_positive(self, delta: f64) -> Self {
-        (self + (self * self + delta * delta).sqrt()) * 0.5
+        // below 0 the sum would cancel to nothing; the same number as a quotient does not
+        let root = (self * self + delta * delta).sqrt();
+        let below = (root - self).recip() * (0.5 * delta * delta);
+        self.select((self + root) * 0.5, below)
     }
 }
 

@@ -59,7 +59,7 @@ const DEFAULT_SPACING: &str = "equal_area";
 /// Loosest and tightest relative tolerance that the integrator keeps its promises at.
 const TOLERANCES: (f64, f64) = (1e-12, 1e-2);
 /// Steepest grading: beyond this the innermost tube is all there is.
-const STEEPEST: f64 = 6.0;
+const STEEPEST: f64 = 3.0;
 
 /// How faces are spaced at the inlet.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -75,14 +75,14 @@ pub enum Spacing {
 }
 
 impl Spacing {
-    /// x = r/R of a face at t in 0 … 1 of a tube.
+    /// 1 − x of a face at t, with all its digits where the faces crowd at the wall.
     #[must_use]
-    pub fn face(self, t: f64) -> f64 {
+    pub fn from_wall(self, t: f64) -> f64 {
         match self {
-            Self::Uniform => t,
-            Self::EqualArea => t.sqrt(),
-            Self::TowardsWall(g) => 1.0 - (1.0 - t).powf(g),
-            Self::BothEnds(g) => t.powf(g) / (t.powf(g) + (1.0 - t).powf(g)),
+            Self::Uniform => 1.0 - t,
+            Self::EqualArea => (1.0 - t) / (1.0 + t.sqrt()),
+            Self::TowardsWall(g) => (1.0 - t).powf(g),
+            Self::BothEnds(g) => (1.0 - t).powf(g) / (t.powf(g) + (1.0 - t).powf(g)),
         }
     }
 }

@@ -70,6 +70,8 @@ pub struct OutputPlace {
     pub name: String,
     /// z from the inlet, in m.
     pub z: f64,
+    /// The section that z was counted in, if one was named.
+    pub section: Option<usize>,
     /// r/R, if a local value is asked for.
     pub position: Option<f64>,
 }
@@ -126,5 +128,5 @@ fn read_place(name: &str, block: &Block<'_>, sections: &[Section]) -> Result<Out
         let at = fields.place_of("z");
         fields.problem(SpecError::OutsideLength { at, z: show(z), length: show(length), of });
     }
-    fields.finish(OutputPlace { name: name.to_owned(), z: start + z.min(length), position })
+    fields.finish(OutputPlace { name: name.to_owned(), z: start + z.min(length), section: section.flatten(), position })
 }

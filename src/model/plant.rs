@@ -18,8 +18,8 @@ use crate::units::{self, Dimension};
 
 /// ε of a concentration to a power that is not whole, as a share of the feed's total (model page, §6).
 const POWER_SHARE: f64 = 1e-6;
-/// Viscosities of fluids, in Pa s: from a gas to rock that creeps.
-const FLUID: (f64, f64) = (1e-7, 1e15);
+/// Viscosities of fluids, in Pa s: from next to nothing, as tests need it, to rock that creeps.
+const FLUID: (f64, f64) = (1e-12, 1e15);
 /// Species given by concentration fill the volume to within this: they are typed with six digits.
 const VOLUME_TOLERANCE: f64 = 1e-6;
 
@@ -135,7 +135,7 @@ impl Plant {
     /// All that is wrong with it, noted with the reader.
     pub fn read(fields: &Fields<'_>) -> Result<Self, Reported> {
         let top = fields.block();
-        let species = fields.child("species").and_then(|child| fields.take(SpeciesList::read(&child)));
+        let species = fields.child("species").map(|child| SpeciesList::read(&child));
         let duct = fields.child("duct").and_then(|child| fields.take(Duct::read(&child)));
         let flow = fields.child("flow").and_then(|child| fields.take(Flow::read(&child)));
         let coolants =
@@ -149,7 +149,7 @@ impl Plant {
         };
         let limits = fields.take(Limits::read(&fields.child_or_absent("limits")));
         let numerics = fields.take(Numerics::read(&fields.child_or_absent("numerics")));
-        let species = species.ok_or(Reported)?;
+        let (species, sound) = species.ok_or(Reported)?;
         let scheme = fields
             .child("polymerization")
             .map_or(Some(Scheme::None), |child| fields.take(Scheme::read(&child, &species)));
@@ -171,6 +171,7 @@ impl Plant {
         else {
             return Err(Reported);
         };
+        fields.take(sound).ok_or(Reported)?;
         let parts = Parts { species: &species, scheme, reactions, mixture: &mixture, stream: &stream };
         let output = output.ok_or(Reported)?;
         let material = fields.take(parts.material(fields, &mixture_block, &output)).ok_or(Reported)?;
@@ -453,7 +454,8 @@ fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed: &Feed) {
             fields.problem(SpecError::Needs { at, key, needs: needs.to_owned() });
         }
     };
-    refuse("pressure", feed.pressure.is_some(), "`feed.pressure`");
+    let flows = feed.pressure.is_some() && material.mixture.has_viscosity();
+    refuse("pressure", flows, "`feed.pressure` and `mixture.viscosity`");
     refuse("viscosity", material.mixture.has_viscosity(), "`mixture.viscosity`");
     refuse("polymer_fraction", material.has_polymer(), "a `polymerization`");
     refuse("dispersity", material.has_polymer(), "a `polymerization`");

@@ -117,6 +117,14 @@ impl Section {
         let length = fields.quantity("length");
         let duct = duct.of_section(&fields);
         let wall = fields.child("wall").and_then(|child| fields.take(Wall::read(&child, walls, coolants)));
+        if let (Some(name), Some(Wall::Jacket(jacket))) = (&name, &wall)
+            && jacket.coolant.is_none()
+            && coolants.has(name)
+        {
+            let (at, name) = (fields.place_of("name"), name.clone());
+            let first = fields.place_of("wall").location;
+            fields.problem(SpecError::NameTaken { at, name, first });
+        }
         fields.finish(())?;
         Ok(Self { name: name.ok_or(Reported)?, length, duct, wall: wall.ok_or(Reported)? })
     }

@@ -125,6 +125,20 @@ impl Species {
         }
     }
 
+    /// A species of which nothing more is said to be missing.
+    fn stand_in(name: &str, block: &Block<'_>) -> Self {
+        Self {
+            name: name.to_owned(),
+            place: block.place(),
+            molar_mass: Some(f64::NAN),
+            formula: None,
+            density: None,
+            heat_capacity: None,
+            conductivity: None,
+            diffusivity: None,
+        }
+    }
+
     fn read(name: &str, block: &Block<'_>) -> Result<Self, Reported> {
         let fields = block.open(&ABOUT);
         let formula = fields.text("formula").and_then(|text| {
@@ -162,23 +176,21 @@ pub struct SpeciesList {
 }
 
 impl SpeciesList {
-    /// Reads the block `species`.
-    ///
-    /// # Errors
-    /// What is wrong with any species.
-    pub fn read(block: &Block<'_>) -> Result<Self, Reported> {
+    /// Reads the block `species`. A species that is wrong has a stand-in in the list, so that the rest of the spec
+    /// can be read on for its own mistakes.
+    pub fn read(block: &Block<'_>) -> (Self, Result<(), Reported>) {
         let mut failed = false;
         let mut items = Vec::new();
         for (name, block) in block.named() {
             match Species::read(name, &block) {
                 Ok(species) => items.push(species),
-                Err(Reported) => failed = true,
+                Err(Reported) => {
+                    failed = true;
+                    items.push(Species::stand_in(name, &block));
+                }
             }
         }
-        if failed || !block.reader().is_clean() && items.is_empty() {
-            return Err(Reported);
-        }
         let names = items.iter().map(|species: &Species| species.name.clone()).collect();
-        Ok(Self { items, names })
+        (Self { items, names }, if failed { Err(Reported) } else { Ok(()) })
     }
 }

@@ -11,7 +11,7 @@ use crate::model::kinetics::Scheme;
 /// Without a polymer: |Σ M n − 1| of the worst stream tube at the end. With one, whose mass is what the small
 /// species leave: |M_M n_M + m0 μ₁ − the same of the feed|, bound fragments counted where they came from.
 #[must_use]
-pub fn mass(run: &RunView<'_>) -> f64 {
+pub fn mass(run: &RunView<'_>) -> Value {
     let end = run.end();
     let material = end.material();
     match &material.chemistry.scheme {
@@ -21,13 +21,15 @@ pub fn mass(run: &RunView<'_>) -> f64 {
                 let total: f64 = tube.iter().zip(&material.molar_masses).map(|(n, mass)| n * mass).sum();
                 (total - 1.0).abs()
             };
-            (0..end.n_tubes()).map(of_tube).fold(0.0, f64::max)
+            Value::Number((0..end.n_tubes()).map(of_tube).fold(0.0, f64::max))
         }
-        Scheme::FreeRadical(scheme) => {
-            let units = |state: &[f64]| state[scheme.monomer] + state[material.n_species() + 1];
-            let drift = units(&end.cup.state) - units(&run.plant.feed.state);
-            (drift * scheme.unit_mass).abs()
-        }
+        Scheme::FreeRadical(scheme) => match monomer_units(run) {
+            Value::Number(open) => {
+                let units = run.plant.feed.state[scheme.monomer] + run.plant.feed.state[material.n_species() + 1];
+                Value::Number(open * units * scheme.unit_mass)
+            }
+            missing => missing,
+        },
     }
 }
 

@@ -173,7 +173,6 @@ fn run_slots(prefix: &str, scope: Scope, all: &mut Vec<Slot>) {
 /// Names of the coolants: lines of `coolants` in use, and sections with a coolant of their own.
 fn coolants(plant: &Plant) -> Vec<String> {
     let mut names: Vec<String> = plant.sections.iter().filter_map(coolant_of).collect();
-    names.dedup();
     let mut seen = Vec::new();
     names.retain(|name| {
         let first = !seen.contains(name);
@@ -224,7 +223,8 @@ impl Slot {
                     let serves = coolant_of(end.leg.system.section).as_ref() == Some(name);
                     serves.then(|| end.integral(Integral::WallHeat))
                 };
-                Value::number_or(Some(run.sections.iter().filter_map(of).sum()), "it is not finite")
+                let heat = run.sections.iter().filter_map(of).reduce(|sum, heat| sum + heat);
+                heat.map_or_else(|| Value::Missing(run.not_reached()), Value::Number)
             }
             SlotKind::Ended => Value::Word(run.trajectory.ended().map_or("outlet", |limit| limit.path()).to_owned()),
         }
@@ -272,15 +272,17 @@ fn station_of<'r, 'a>(run: &'r RunView<'a>, place: PlaceKind) -> Option<(&'r Sta
         }
         PlaceKind::Place(p) => {
             let place = &run.plant.output.places[p];
-            nearest(run, place.z).map(|station| (station, place.position))
+            nearest(run, place.z, place.section).map(|station| (station, place.position))
         }
     }
 }
 
 /// The station recorded at a z, if the run came that far.
-fn nearest<'r, 'a>(run: &'r RunView<'a>, z: f64) -> Option<&'r StationView<'a>> {
+fn nearest<'r, 'a>(run: &'r RunView<'a>, z: f64, section: Option<usize>) -> Option<&'r StationView<'a>> {
     let tolerance = 1e-9 * run.plant.length();
     let distance = |station: &&StationView<'_>| (station.z - z).abs();
-    let station = run.stations().min_by(|a, b| distance(a).total_cmp(&distance(b)))?;
+    let of_section = |s: usize| section.is_none_or(|wanted| wanted == s);
+    let sections = run.sections.iter().enumerate().filter(|(s, _)| of_section(*s));
+    let station = sections.flat_map(|(_, all)| all).min_by(|a, b| distance(a).total_cmp(&distance(b)))?;
     (distance(&station) <= tolerance).then_some(station)
 }

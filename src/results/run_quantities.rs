@@ -179,7 +179,7 @@ pub const RUN: &[Quantity] = &[
         name: "balance.mass",
         dimension: Dimension::RATIO,
         about: "what of the mass does not close between feed and end, relative",
-        at: At::Run { value: |run, _| number(balance::mass(run)), in_sections: false },
+        at: At::Run { value: |run, _| balance::mass(run), in_sections: false },
     },
     Quantity {
         name: "balance.elements",

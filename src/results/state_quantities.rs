@@ -259,7 +259,12 @@ pub fn at_place(quantity: &Quantity, station: &StationView<'_>, parameter: usize
     };
     match (position, local) {
         (Some(position), Some(_)) if quantity.name == "temperature" => number(station.profile.temperature_at(position)),
-        (Some(position), Some(local)) => local_value(station, *local, parameter, position),
+        (Some(position), Some(local)) => {
+            match (local_value(station, *local, parameter, position), cup(station, parameter)) {
+                (Value::Missing(_), Value::Missing(reason)) => Value::Missing(reason),
+                (value, _) => value,
+            }
+        }
         _ => cup(station, parameter),
     }
 }

@@ -63,8 +63,6 @@ pub enum Takes {
     Points,
     /// A list of numbers of this dimension.
     Numbers(Dimension),
-    /// A list of numbers of the first dimension, whose first entry has the second.
-    NumbersFrom(Dimension, Dimension),
     /// A whole number, from the first to the last.
     Whole(usize, usize),
     /// `true` or `false`.

@@ -100,12 +100,6 @@ impl<'a> Block<'a> {
         Place { location: self.node().location.clone(), path: self.path.clone() }
     }
 
-    /// The text that holds for this block's numbers, if a source was given here or above.
-    #[must_use]
-    pub fn source(&self) -> Option<&str> {
-        self.source.as_ref().map(|given| given.text.as_str())
-    }
-
     /// Opens the block by its table.
     #[must_use]
     pub fn open(&self, about: &'static About) -> Fields<'a> {

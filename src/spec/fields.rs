@@ -11,7 +11,7 @@ use super::about::{About, Bound, Key, Need, Takes};
 use super::block::Block;
 use super::error::SpecError;
 use super::later::is_later;
-use super::node::{Node, Origin, Value};
+use super::node::{Entry, Node, Origin, Value};
 use super::place::{KeyPath, Place};
 use super::reader::Reported;
 use super::suggest::nearest;
@@ -81,15 +81,6 @@ impl<'a> Fields<'a> {
         self.measured(key, dimension, bound)
     }
 
-    /// A quantity whose dimension only the caller knows (a rate constant), SI.
-    pub fn quantity_of(&self, key: &'static str, dimension: Dimension) -> f64 {
-        let bound = match self.known(key).takes {
-            Takes::Subject(_, bound) | Takes::Quantity(_, bound) => bound,
-            _ => Bound::Any,
-        };
-        self.measured(key, dimension, bound).unwrap_or(f64::NAN)
-    }
-
     fn measured(&self, key: &'static str, dimension: Dimension, bound: Bound) -> Option<f64> {
         let child = self.child(key)?;
         match child.measure(key, dimension, bound) {
@@ -113,8 +104,6 @@ impl<'a> Fields<'a> {
         for (k, item) in child.items().iter().enumerate() {
             let dimension = match known.takes {
                 Takes::Numbers(dimension) => dimension,
-                Takes::NumbersFrom(_, first) if k == 0 => first,
-                Takes::NumbersFrom(dimension, _) => dimension,
                 Takes::SubjectPolynomial => {
                     let power = -f64::from(u16::try_from(k).unwrap_or(u16::MAX));
                     let per = Dimension::TEMPERATURE_DIFFERENCE.to_power(power);
@@ -315,6 +304,7 @@ impl<'a> Fields<'a> {
 
     fn check_keys(&self) {
         for entry in self.block.node().entries().unwrap_or_default() {
+            self.check_provenance(entry);
             let at = Place { location: entry.key_location.clone(), path: self.block.path().child(&entry.key) };
             match self.about.key(&entry.key) {
                 Some(key) if key.need == Need::Later => {
@@ -334,6 +324,23 @@ impl<'a> Fields<'a> {
                 }
             }
         }
+    }
+
+    /// `source` and `note` are texts, `confirmed` is true or false.
+    fn check_provenance(&self, entry: &Entry) {
+        let node = &entry.node;
+        let at = || Place { location: node.location.clone(), path: self.block.path().child(&entry.key) };
+        let (key, found) = (entry.key.clone(), node.shape());
+        let error = match (entry.key.as_str(), &node.value) {
+            ("confirmed", Value::Flag(_)) => return,
+            ("confirmed", Value::Text(text)) => SpecError::NotAFlag { at: at(), key, text: text.clone() },
+            ("confirmed", _) => SpecError::WrongShape { at: at(), key, wanted: "`true` or `false`", found },
+            ("source" | "note", _) if node.text().is_none() => {
+                SpecError::WrongShape { at: at(), key, wanted: "a text", found }
+            }
+            _ => return,
+        };
+        self.problem(error);
     }
 
     fn usable_keys(&self) -> impl Iterator<Item = &'static str> {

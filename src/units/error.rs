@@ -178,7 +178,7 @@ impl UnitError {
             Self::UnknownUnit { corrected: Some(corrected), .. } => {
                 format!("do you mean `{corrected}`?")
             }
-            Self::UnknownUnit { corrected: None, .. } => "`axirad list units` shows all that are known".into(),
+            Self::UnknownUnit { corrected: None, .. } => "known are the SI units with their prefixes, and `in`, `ft`, `lb`, `gal`, `psi`, `bar`, `Btu`, `cal`, `hp`, `degC`, `degF`, `min`, `h` and their like".into(),
             Self::AmbiguousUnit { choices, .. } => format!("write {}", choices.join(", ")),
             Self::AmbiguousQuotient { below, above, .. } => {
                 format!("write `{below}` or `{above}`")
@@ -282,7 +282,7 @@ mod tests {
         ("5 6 m", Dimension::LENGTH, "`5 6` has a number where the unit is wanted", "a value is one number and a unit, such as `85 degC` or `2e-4 1/s`"),
         ("85", Dimension::TEMPERATURE, "`85` has no unit: a temperature (K) is wanted", "write `85 degC` or `85 K`"),
         ("3 kg/hr", Dimension::MASS_FLOW, "there is no unit `hr`", "do you mean `3 kg/h`?"),
-        ("3 wobbles", Dimension::LENGTH, "there is no unit `wobbles`", "`axirad list units` shows all that are known"),
+        ("3 wobbles", Dimension::LENGTH, "there is no unit `wobbles`", "known are the SI units with their prefixes, and `in`, `ft`, `lb`, `gal`, `psi`, `bar`, `Btu`, `cal`, `hp`, `degC`, `degF`, `min`, `h` and their like"),
         ("3 ton", Dimension::MASS, "`ton` stands for more than one unit", "write `t` (1000 kg), `ton_short` (2000 lb), `ton_long` (2240 lb)"),
         ("3 W/m2 K", Dimension::HEAT_TRANSFER_COEFFICIENT, "`W/m2 K` can be read in two ways", "write `W/(m2 K)` or `W K/m2`"),
         ("3 m99", Dimension::LENGTH, "`m99` has no exponent that can be used", "an exponent follows its unit: `m2`, `s-1`, `m1.5`; the largest is 20"),

@@ -1,7 +1,7 @@
 //! The terms of the two balances, one a file, in the order of the model page, §2.
 //!
 //! Each adds what it brings to tube `i` per metre of length: amounts to `amounts`, in mol/(s m), heat to `heat`
-//!, in W/m; `rhs.rs` divides by ṁᵢ and ṁᵢ c_p,i.
+//! in W/m; `rhs.rs` divides by ṁᵢ and ṁᵢ c_p,i.
 
 pub mod conduction;
 pub mod diffusion;

@@ -28,13 +28,6 @@ impl Tube {
         8.0 * viscosity * mean_velocity / (self.radius * self.radius)
     }
 
-    /// Share of the flow of Poiseuille's profile between the axis and x = r/R: 2x² − x⁴.
-    #[must_use]
-    pub fn parabolic_share(x: f64) -> f64 {
-        let y = x * x;
-        2.0 * y - y * y
-    }
-
     /// r² at which Poiseuille's profile has passed a share of the flow: R² (1 − √(1 − share)), in m².
     #[must_use]
     pub fn parabolic_square(&self, share: f64) -> f64 {

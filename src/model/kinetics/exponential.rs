@@ -1,7 +1,7 @@
 //! A rate that grows by a factor e with every so many kelvin: Frank-Kamenetskii's form.
 
 use crate::model::number::Number;
-use crate::model::property::{AT, KIND};
+use crate::model::property::{AT, KIND, VALID, skip_range};
 use crate::spec::{About, Block, Bound, Key, Need, Reported, Takes};
 use crate::units::Dimension;
 
@@ -28,6 +28,7 @@ pub const ABOUT: About = About {
             need: Need::Required("10 K"),
             meaning: "the rise in temperature that multiplies the rate by e",
         },
+        VALID,
     ],
 };
 
@@ -51,6 +52,7 @@ impl Exponential {
         let fields = block.open_for(&ABOUT, subject);
         let law =
             Self { value: fields.quantity("value"), at: fields.quantity("at"), e_fold: fields.quantity("e_fold") };
+        skip_range(&fields);
         fields.finish(law)
     }
 

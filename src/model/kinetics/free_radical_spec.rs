@@ -238,7 +238,7 @@ impl FreeRadical {
         let transfer = read_transfer(&fields, species, polymer);
         let heat = fields.child("heat").and_then(|child| fields.take(read_heat(&child)));
         if let Some(k) = polymer
-            && species.items[k].molar_mass.is_some()
+            && species.items[k].molar_mass.is_some_and(|mass| !mass.is_nan())
         {
             let (at, key) = (species.items[k].place.clone(), "molar_mass".to_owned());
             let with = format!("the polymer `{}`: it has a distribution", species.names[k]);
@@ -288,12 +288,20 @@ impl FreeRadical {
     }
 }
 
+/// No rate law in use has a higher order.
+const HIGHEST_ORDER: f64 = 9.0;
+
 fn read_thermal(block: &Block<'_>) -> Result<Thermal, Reported> {
     let fields = block.open(&THERMAL);
     let order = fields.quantity("order");
+    if order > HIGHEST_ORDER {
+        let (at, key) = (fields.place_of("order"), "order".to_owned());
+        let text = at.location.source.text[at.location.bytes.clone()].to_owned();
+        fields.problem(SpecError::OutOfBounds { at, key, text, bound: format!("at most {HIGHEST_ORDER}") });
+    }
     let rate_constant = fields
         .child("rate_constant")
-        .filter(|_| order.is_finite())
+        .filter(|_| order <= HIGHEST_ORDER)
         .and_then(|child| fields.take(RateConstant::read(&child, Dimension::rate_constant(order))));
     fields.finish(())?;
     Ok(Thermal::Order { order, rate_constant: rate_constant.ok_or(Reported)? })

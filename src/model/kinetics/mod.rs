@@ -89,14 +89,4 @@ impl Chemistry {
             Scheme::FreeRadical(scheme) => heat - scheme.changes(local, sources) * scheme.heat,
         }
     }
-
-    /// Whether anything sets heat free or takes it up.
-    #[must_use]
-    pub fn has_heat(&self) -> bool {
-        let polymerizes = match &self.scheme {
-            Scheme::None => false,
-            Scheme::FreeRadical(scheme) => scheme.heat != 0.0,
-        };
-        polymerizes || self.reactions.iter().any(|reaction| reaction.heat != 0.0)
-    }
 }

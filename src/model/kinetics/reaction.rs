@@ -204,11 +204,13 @@ impl Reaction {
         }
         let mut reactions: Vec<Self> = Vec::new();
         let mut failed = false;
-        for item in block.items() {
-            match Self::read(&item, species, polymer) {
+        let items = block.items();
+        for item in &items {
+            match Self::read(item, species, polymer) {
                 Ok(reaction) if reactions.iter().any(|other| other.name == reaction.name) => {
+                    let first = reactions.iter().position(|other| other.name == reaction.name).unwrap_or(0);
+                    let first = items[first].node().location.clone();
                     let (at, name) = (item.place(), reaction.name);
-                    let first = block.node().location.clone();
                     let _ = block.refuse(SpecError::NameTaken { at, name, first });
                     failed = true;
                 }
@@ -235,6 +237,7 @@ impl Reaction {
             }
         }
         let order: f64 = orders.iter().map(|(_, order)| order).sum();
+        check_molar_masses(&fields, &name, &orders, species);
         check_mass(&fields, &name, &consumed, &made, species);
         let rate_constant = fields
             .child("rate_constant")
@@ -366,6 +369,21 @@ fn amounts(
         }
     }
     amounts
+}
+
+/// Every species of a rate law is counted in moles, a catalyst's too.
+fn check_molar_masses(fields: &Fields<'_>, name: &str, orders: &[(usize, f64)], species: &SpeciesList) {
+    for (k, order) in orders {
+        let of = &species.items[*k];
+        if of.molar_mass.is_none() && *order != 0.0 {
+            fields.problem(SpecError::MissingProperty {
+                at: of.place.clone(),
+                species: of.name.clone(),
+                property: "molar_mass",
+                because: format!("for reaction `{name}`"),
+            });
+        }
+    }
 }
 
 /// Holds the reaction's mass, or its elements where all species have formulas.

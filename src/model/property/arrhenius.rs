@@ -134,10 +134,4 @@ impl Arrhenius {
         let exponent = (inverse - self.inverse) * -self.activation_temperature;
         exponent.at_least(-MAX_EXPONENT).at_most(MAX_EXPONENT).exp() * self.value
     }
-
-    /// The law with its value scaled.
-    #[must_use]
-    pub fn scaled(&self, factor: f64) -> Self {
-        Self { value: self.value * factor, ..self.clone() }
-    }
 }

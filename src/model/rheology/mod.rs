@@ -33,6 +33,9 @@ pub const KINDS: &[&About] = &[
     &polymer_solution::ABOUT,
 ];
 
+/// Least viscosity, in Pa s: a law that falls below it far outside its range stays finite there.
+const LEAST_VISCOSITY: f64 = 1e-12;
+
 /// What a viscosity law may depend on, in one stream tube.
 #[derive(Clone, Copy, Debug)]
 pub struct Fluid<N> {
@@ -90,15 +93,19 @@ impl Viscosity {
     #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
         match &self.form {
-            Form::Plain(law) => law.at(fluid.temperature),
+            Form::Plain(law) => law.at(fluid.temperature).at_least(LEAST_VISCOSITY),
             Form::VogelFulcherTammann(law) => law.zero_shear(fluid.temperature),
             Form::PolymerSolution(law) => law.zero_shear(fluid),
         }
     }
 
-    /// The range of temperature that was stated, or that a table has, in K.
+    /// Ranges of temperature that were stated, or that a table has, by what follows `mixture.viscosity`, in K.
     #[must_use]
-    pub fn range(&self) -> Option<(f64, f64)> {
-        self.range
+    pub fn ranges(&self) -> Vec<(&'static str, (f64, f64))> {
+        let solvent = match &self.form {
+            Form::PolymerSolution(law) => law.solvent_range(),
+            Form::Plain(_) | Form::VogelFulcherTammann(_) => None,
+        };
+        [("", self.range), (".solvent", solvent)].into_iter().filter_map(|(key, range)| Some((key, range?))).collect()
     }
 }

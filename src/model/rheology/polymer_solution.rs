@@ -107,6 +107,15 @@ impl PolymerSolution {
         fields.finish(law)
     }
 
+    /// The range that the solvent's law was stated for, in K.
+    #[must_use]
+    pub fn solvent_range(&self) -> Option<(f64, f64)> {
+        match &self.base {
+            Base::Coefficients(..) => None,
+            Base::Solvent(law) => law.range(),
+        }
+    }
+
     /// Zero-shear viscosity in one stream tube.
     ///
     /// ln η = a_0 + b_0/T + (M_w/M_ref)^m Σ_{k≥1} (a_k + b_k/T) w_p^k

@@ -63,6 +63,12 @@ impl Coolants {
         if failed { Err(Reported) } else { Ok(coolants) }
     }
 
+    /// Whether a line has this name.
+    #[must_use]
+    pub fn has(&self, name: &str) -> bool {
+        self.names.iter().any(|known| known == name)
+    }
+
     /// The temperature of a wall's coolant: one named, or a block of its own, in K.
     ///
     /// # Errors
