@@ -1,5 +1,6 @@
 //! The physics at one point, in SI: no grid, no solver (model page, §1 to §6).
 
+mod coherence;
 pub mod duct;
 pub mod feed;
 pub mod flow;

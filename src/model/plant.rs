@@ -1,8 +1,11 @@
 //! The whole reactor as a spec describes it, in SI, ready to be discretised.
 
+use super::coherence::{
+    check_closing, check_feed_viscosity, check_feed_within_limits, check_limits_apply, check_viscosity,
+};
 use super::duct::{self, Duct};
 use super::feed::{self, Amount, Basis, Stream};
-use super::flow::{self, Flow, Profile};
+use super::flow::{self, Flow};
 use super::kinetics::reaction::{self, Reaction};
 use super::kinetics::{Chemistry, SCHEMES, Scheme};
 use super::limits::{self, Limits};
@@ -13,13 +16,10 @@ use super::output::{self, Output};
 use super::section::{self, Section};
 use super::species::{self, Species, SpeciesList};
 use super::wall::{self, coolant, coolant::Coolants};
-use crate::spec::{Block, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes};
-use crate::units::{self, Dimension};
+use crate::spec::{Block, Fields, Key, Need, Reported, SpecError, Takes};
 
 /// ε of a concentration to a power that is not whole, as a share of the feed's total (model page, §6).
 const POWER_SHARE: f64 = 1e-6;
-/// Viscosities of fluids, in Pa s: from next to nothing, as tests need it, to rock that creeps.
-const FLUID: (f64, f64) = (1e-12, 1e15);
 /// Species given by concentration fill the volume to within this: they are typed with six digits.
 const VOLUME_TOLERANCE: f64 = 1e-6;
 
@@ -290,26 +290,6 @@ fn elements(species: &[&Species], polymer: bool) -> Vec<(&'static str, Vec<f64>)
     all.into_iter().map(|element| (element, atoms(element))).collect()
 }
 
-fn check_viscosity(fields: &Fields<'_>, material: &Material, flow: Flow) {
-    let missing = |what: &str| {
-        let (at, key) = (fields.place_of("flow"), what.to_owned());
-        fields.problem(SpecError::Needs { at, key, needs: "`mixture.viscosity`".to_owned() });
-    };
-    if !material.mixture.has_viscosity() {
-        if flow.profile == Profile::FromViscosity {
-            missing("profile: from_viscosity");
-        }
-        if flow.viscous_heating {
-            missing("viscous_heating: true");
-        }
-    }
-    if material.mixture.viscosity_needs_polymer() && !material.has_polymer() {
-        let (at, key) = (fields.place_of("mixture"), "mixture.viscosity".to_owned());
-        let needs = "a `polymerization` that says which species is the polymer".to_owned();
-        fields.problem(SpecError::Needs { at, key, needs });
-    }
-}
-
 /// The feed's amounts per mass, and its flow.
 fn build_feed(
     fields: &Fields<'_>,
@@ -402,86 +382,6 @@ fn check_volume(fields: &Fields<'_>, material: &Material, masses: &[f64], temper
         return Err(Reported);
     }
     Ok(())
-}
-
-/// The closing flux is the same whichever species closes it, since Σ M_k ∂n_k/∂r = 0 without a polymer; with
-/// one, the polymer closes it. A key that cannot change anything is refused.
-fn check_closing(block: &Block<'_>) -> Result<(), Reported> {
-    let Some(child) = block.child_of("closing_species") else { return Ok(()) };
-    let (at, key) = (child.place(), "closing_species".to_owned());
-    let with = "any mixture: the balance closes the same whichever species is named; leave it out".to_owned();
-    Err(block.refuse(SpecError::DoesNotGoWith { at, key, with }))
-}
-
-/// A viscosity that no fluid has at the feed, or that rises with temperature, is a slip of the pen.
-fn check_feed_viscosity(fields: &Fields<'_>, material: &Material, feed: &Feed) {
-    if !material.mixture.has_viscosity() {
-        return;
-    }
-    let mut fractions = vec![0.0; material.n_components()];
-    let mut at = |warmer: f64| {
-        let mut state = feed.state.clone();
-        state[material.n_amounts()] += warmer;
-        material.fractions(&state, &mut fractions);
-        material.mixture.viscosity(&material.fluid(&state, &fractions))
-    };
-    let (here, warmer) = (at(0.0), at(10.0));
-    let place = || {
-        fields.child("mixture").map_or_else(
-            || fields.block().place(),
-            |m| m.child_of("viscosity").map_or_else(|| m.place(), |v| v.place()),
-        )
-    };
-    let show = |value| units::write(value, Dimension::VISCOSITY);
-    if !(FLUID.0..=FLUID.1).contains(&here) {
-        let needs =
-            format!("a law that gives a fluid: at the feed it comes to {here:.3e} Pa s; look at its units and powers");
-        fields.problem(SpecError::Needs { at: place(), key: "mixture.viscosity".to_owned(), needs });
-    } else if warmer > here {
-        let text = format!("the viscosity rises from {} at the feed to {} 10 K above it", show(here), show(warmer));
-        fields.block().reader().warn(ReadWarning { code: "rising_viscosity", text, at: place() });
-    }
-}
-
-/// A limit on what the run does not have would be read and ignored.
-fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed: &Feed) {
-    let Some(limits) = fields.child("limits") else { return };
-    let refuse = |key: &'static str, applies: bool, needs: &str| {
-        if let Some(child) = limits.child_of(key)
-            && !applies
-        {
-            let (at, key) = (child.place(), format!("limits.{key}"));
-            fields.problem(SpecError::Needs { at, key, needs: needs.to_owned() });
-        }
-    };
-    let flows = feed.pressure.is_some() && material.mixture.has_viscosity();
-    refuse("pressure", flows, "`feed.pressure` and `mixture.viscosity`");
-    refuse("viscosity", material.mixture.has_viscosity(), "`mixture.viscosity`");
-    refuse("polymer_fraction", material.has_polymer(), "a `polymerization`");
-    refuse("dispersity", material.has_polymer(), "a `polymerization`");
-}
-
-fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits: &Limits) {
-    let temperature = feed.temperature();
-    let outside = temperature < limits.lowest_temperature || temperature > limits.highest_temperature;
-    if outside {
-        let show = |value| units::write(value, Dimension::TEMPERATURE);
-        let place = fields.child("feed").and_then(|feed| feed.child_of("temperature")).map(|child| child.place());
-        let needs = format!(
-            "to lie within `limits.temperature`, {} to {}, but is {}",
-            show(limits.lowest_temperature),
-            show(limits.highest_temperature),
-            show(temperature)
-        );
-        let at = place.unwrap_or_else(|| fields.place_of("feed"));
-        fields.problem(SpecError::Needs { at, key: "feed.temperature".to_owned(), needs });
-    }
-    if let Some(pressure) = feed.pressure
-        && pressure < limits.lowest_pressure
-    {
-        let (at, key) = (fields.place_of("feed"), "feed.pressure".to_owned());
-        fields.problem(SpecError::Needs { at, key, needs: "to lie above `limits.pressure.lowest`".to_owned() });
-    }
 }
 
 impl Material {

@@ -1,6 +1,8 @@
 //! Closed solutions, and limits that must coincide.
 
+mod diffusion;
 mod explosion;
+mod laws;
 mod limits;
 mod modes;
 mod viscosity_fields;

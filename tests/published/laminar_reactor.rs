@@ -147,3 +147,18 @@ fn conversion_without_diffusion_is_of_second_order_in_the_width_of_the_tubes() {
     }
     checks.end();
 }
+
+#[test]
+fn conversions_spread_over_a_laminar_flow_as_its_residence_times() {
+    // The share s of the flow that is fastest lies inside 1 − x² = √(1 − s), and stays τ/(2(1 − x²)): first order,
+    // X = 1 − exp(−Da/(2√(1 − s))), Da = 1. Derived here from the parabola.
+    let run =
+        Case::file("checks/laminar_reactor.yaml").set("reactions.decay.rate_constant", "1e-3 1/s").tubes(80).run();
+    let mut checks = Checks::default();
+    for (name, share) in [("percentile_10", 0.1_f64), ("percentile_50", 0.5), ("percentile_90", 0.9)] {
+        let expected = 1.0 - (-0.5 / (1.0 - share).sqrt()).exp();
+        // Linear between tubes that hold some hundredths of the flow each.
+        checks.relative(name, run.number(&format!("outlet.conversion.{name}")), expected, 1e-3);
+    }
+    checks.end();
+}
