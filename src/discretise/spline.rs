@@ -2,16 +2,18 @@
 
 use crate::model::property::table::monotone_slopes;
 
-/// A piece of the spline may leave the range of the four values around it by their own spread and by this share of
-/// the spread of all; beyond that it runs wild. Beside a jump, as at an inlet, a sound spline rings by 0.02.
-const RINGING: f64 = 0.05;
+/// A smooth extremum between two knots passes them by at most h²|y″|/8; a piece may by this share of h²|y″|, with
+/// the smaller curvature of its two ends. Beside a jump the curvature on one side is next to nothing.
+const EXCESS: f64 = 0.5;
+/// Beyond the knots the end pieces go on, but no faster than this many times the last secant.
+const BEYOND: f64 = 2.0;
 
-/// A cubic spline with not-a-knot ends; where that runs wild, a monotone cubic that is held beyond its knots.
+/// A cubic spline with not-a-knot ends, limited where the values are not smooth on the scale of the knots.
 ///
-/// A spline needs values that are smooth on the scale of its knots. Tubes of very unlike width whose values jump,
-/// such as a thin jet through stiff fluid, are not: there the spline would report temperatures that nothing has.
+/// At an inlet whose wall is colder than the feed, and where stream tubes of very unlike width hold values that
+/// jump, a spline would report temperatures that nothing has. There a piece takes the slopes of a monotone cubic.
 ///
-/// Source: de Boor (1978), A Practical Guide to Splines, ch. IV (from memory).
+/// Source: de Boor (1978), A Practical Guide to Splines, ch. IV (from memory); the limit is our own.
 #[derive(Clone, Debug)]
 pub struct Spline {
     /// Where the values stand, ascending.
@@ -20,8 +22,6 @@ pub struct Spline {
     y: Vec<f64>,
     /// Slopes at the knots.
     slope: Vec<f64>,
-    /// Whether the end values are held beyond the knots; else the end pieces go on.
-    held: bool,
 }
 
 impl Spline {
@@ -34,41 +34,64 @@ impl Spline {
     #[must_use]
     pub fn through(x: Vec<f64>, y: Vec<f64>) -> Self {
         let slope = slopes(&x, &y);
-        let smooth = Self { x, y, slope, held: false };
-        if smooth.runs_wild() { smooth.monotone() } else { smooth }
+        let mut spline = Self { x, y, slope };
+        spline.limit();
+        spline
     }
 
-    /// Whether any piece leaves the values around it by more than sound ringing.
-    fn runs_wild(&self) -> bool {
-        let spread = |values: &[f64]| {
-            let low = values.iter().copied().fold(f64::INFINITY, f64::min);
-            let high = values.iter().copied().fold(f64::NEG_INFINITY, f64::max);
-            (low, high, high - low)
-        };
-        let ringing = RINGING * spread(&self.y).2;
-        (0..self.x.len() - 1).any(|k| {
-            let around = &self.y[k.saturating_sub(1)..(k + 3).min(self.y.len())];
-            let (low, high, width) = spread(around);
-            let (piece, h) = (self.piece(k), self.x[k + 1] - self.x[k]);
-            let inside = piece.turning_points().into_iter().filter(|s| *s > 0.0 && *s < h).map(|s| piece.at(s));
-            let margin = width + ringing;
-            inside.into_iter().any(|value| value > high + margin || value < low - margin)
-        })
-    }
-
-    /// The same knots joined by a monotone cubic.
-    fn monotone(self) -> Self {
+    /// Gives every piece that overshoots the slopes of a monotone cubic, and those whom this makes overshoot.
+    fn limit(&mut self) {
+        let n = self.x.len();
         let widths: Vec<f64> = self.x.windows(2).map(|w| w[1] - w[0]).collect();
         let secants: Vec<f64> = self.y.windows(2).zip(&widths).map(|(w, h)| (w[1] - w[0]) / h).collect();
-        Self { slope: monotone_slopes(&widths, &secants), held: true, ..self }
+        let curvature = |k: usize| {
+            let k = k.clamp(1, n - 2);
+            (2.0 * (secants[k] - secants[k - 1]) / (widths[k] + widths[k - 1])).abs()
+        };
+        // an end piece has one curvature at its own end: it takes the next one inwards for the other
+        let smaller = |k: usize| match k {
+            0 => curvature(1).min(curvature(2)),
+            k if k == n - 2 => curvature(n - 2).min(curvature(n - 3)),
+            k => curvature(k).min(curvature(k + 1)),
+        };
+        let excess: Vec<f64> = (0..n - 1).map(|k| EXCESS * widths[k] * widths[k] * smaller(k)).collect();
+        let mut limited: Option<Vec<f64>> = None;
+        for _ in 0..n {
+            let wild: Vec<usize> = (0..n - 1).filter(|k| self.overshoots(*k, excess[*k])).collect();
+            if wild.is_empty() {
+                return;
+            }
+            let monotone = limited.get_or_insert_with(|| monotone_slopes(&widths, &secants));
+            for k in wild {
+                self.slope[k] = monotone[k];
+                self.slope[k + 1] = monotone[k + 1];
+            }
+        }
     }
 
-    /// The value at x; outside the knots the end pieces go on, or the end values are held.
+    /// Whether a piece leaves the values at its ends by more than a smooth extremum does.
+    fn overshoots(&self, k: usize, excess: f64) -> bool {
+        let (piece, h) = (self.piece(k), self.x[k + 1] - self.x[k]);
+        let (low, high) = (self.y[k].min(self.y[k + 1]), self.y[k].max(self.y[k + 1]));
+        let margin = excess + 1e-13 * high.abs().max(low.abs()); // and rounding
+        let inside = piece.turning_points().into_iter().filter(|s| *s > 0.0 && *s < h);
+        inside.map(|s| piece.at(s)).any(|value| value > high + margin || value < low - margin)
+    }
+
+    /// The value at x; beyond the knots the end pieces go on, no faster than `BEYOND` allows.
     #[must_use]
     pub fn at(&self, x: f64) -> f64 {
-        let x = if self.held { x.clamp(self.x[0], self.x[self.x.len() - 1]) } else { x };
-        let k = self.x.partition_point(|knot| *knot <= x).clamp(1, self.x.len() - 1) - 1;
-        self.piece(k).at(x - self.x[k])
+        let last = self.x.len() - 1;
+        let k = self.x.partition_point(|knot| *knot <= x).clamp(1, last) - 1;
+        let value = self.piece(k).at(x - self.x[k]);
+        let (knot, inner) = match x {
+            x if x < self.x[0] => (0, 1),
+            x if x > self.x[last] => (last, last - 1),
+            _ => return value,
+        };
+        let secant = (self.y[knot] - self.y[inner]) / (self.x[knot] - self.x[inner]);
+        let most = BEYOND * (secant * (x - self.x[knot])).abs();
+        self.y[knot] + (value - self.y[knot]).clamp(-most, most)
     }
 
     /// The largest value between two ends, and where it is.
@@ -196,5 +219,17 @@ mod tests {
         assert_relative_eq!(value, 378.0, epsilon = 1e-12);
         assert_relative_eq!(place, 0.5, epsilon = 1e-12);
         assert!((0..1000).all(|k| spline.at(1e-3 * f64::from(k)) >= 373.0));
+    }
+
+    #[test]
+    fn a_hot_feed_at_a_cold_wall_is_nowhere_hotter_than_the_feed() {
+        for n in [4, 10, 40, 200] {
+            let mut x: Vec<f64> = (0..n).map(|k| (f64::from(k) + 0.5) / f64::from(n)).collect();
+            let mut y = vec![360.0; x.len()];
+            x.push(1.0);
+            y.push(314.0);
+            let (value, _) = Spline::through(x, y).largest(0.0, 1.0);
+            assert_relative_eq!(value, 360.0, max_relative = 1e-12);
+        }
     }
 }
