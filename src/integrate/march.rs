@@ -13,8 +13,8 @@ use crate::discretise::rhs::System;
 
 /// First probe of the integrator, as a share of the section's length: its default of 1 m may lie far outside.
 const FIRST_PROBE: f64 = 1e-4;
-/// Steps after which a run is given up: a tolerance of 1e-12 needs some 10⁵.
-const MOST_STEPS: usize = 1_000_000;
+/// Steps after which a section is given up: the tightest tolerance needs some 10⁴, and this many take seconds.
+const MOST_STEPS: usize = 150_000;
 /// Least step, as a share of the section's length: an explosion at the inlet may be that short.
 const LEAST_STEP: f64 = 1e-19;
 /// A place along z is found to this share of the section's length.
@@ -120,6 +120,7 @@ fn in_words(error: &DiffsolError) -> String {
         ("nonlinear solver fail", "the iteration for the next step did not converge"),
         ("error test fail", "no step was small enough for the tolerance"),
         ("number of", "the steps along z became too many"),
+        ("timesteps", "the steps along z became too many"),
     ];
     known.iter().find(|(part, _)| said.contains(part)).map_or(said, |(_, words)| (*words).to_owned())
 }

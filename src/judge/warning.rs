@@ -197,7 +197,7 @@ fn slow_radicals(run: &RunView<'_>) -> Option<String> {
     let lifetime = |station: &StationView<'_>| Some((material.radical_lifetime(&station.cup.state)?, station.z));
     let (longest, z) = run.stations().filter_map(lifetime).max_by(|a, b| a.0.total_cmp(&b.0))?;
     let residence = residence_time(run);
-    (longest > LIFETIME_SHARE * residence).then(|| {
+    (residence > 0.0 && longest > LIFETIME_SHARE * residence).then(|| {
         format!(
             "a radical lives up to {longest:.3} s (at z = {z:.4} m), {:.1} % of the residence time of {residence:.4} s",
             100.0 * longest / residence

@@ -111,3 +111,19 @@ pub(super) fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits:
         fields.problem(SpecError::Needs { at, key, needs: "to lie above `limits.pressure.lowest`".to_owned() });
     }
 }
+
+/// Stations times unknowns that a run keeps in memory; each takes some hundred bytes with what follows from it.
+const MOST_KEPT: usize = 10_000_000;
+
+/// A run that would not fit in memory is refused before it begins.
+pub(super) fn check_size(fields: &Fields<'_>, material: &Material, tubes: usize, stations: usize) {
+    let unknowns = tubes * material.n_vars();
+    if stations * unknowns <= MOST_KEPT {
+        return;
+    }
+    let place = fields.child("output").and_then(|output| output.child_of("stations")).map(|child| child.place());
+    let at = place.unwrap_or_else(|| fields.place_of("numerics"));
+    let bound = format!("at most {} with {unknowns} unknowns", MOST_KEPT / unknowns);
+    let (key, text) = ("output.stations".to_owned(), stations.to_string());
+    fields.problem(SpecError::OutOfBounds { at, key, text, bound });
+}

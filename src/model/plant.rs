@@ -1,7 +1,7 @@
 //! The whole reactor as a spec describes it, in SI, ready to be discretised.
 
 use super::coherence::{
-    check_closing, check_feed_viscosity, check_feed_within_limits, check_limits_apply, check_viscosity,
+    check_closing, check_feed_viscosity, check_feed_within_limits, check_limits_apply, check_size, check_viscosity,
 };
 use super::duct::{self, Duct};
 use super::feed::{self, Amount, Basis, Stream};
@@ -184,6 +184,7 @@ impl Plant {
         check_feed_within_limits(fields, &feed, &limits);
         check_limits_apply(fields, &material, &feed);
         check_feed_viscosity(fields, &material, &feed);
+        check_size(fields, &material, numerics.stream_tubes, output.stations);
         if !top.reader().is_clean() {
             return Err(Reported);
         }

@@ -13,6 +13,8 @@ const MASS_TOLERANCE: f64 = 1e-3;
 const ATOM_TOLERANCE: f64 = 1e-6;
 /// The heat in the equilibrium may differ from the reaction's by this share before it is warned of.
 const HEAT_TOLERANCE: f64 = 0.05;
+/// The highest sum of orders whose rate constant still has a readable unit; each order is held below 10.
+const HIGHEST_ORDER: f64 = 30.0;
 /// e²⁰⁰ lies far beyond any equilibrium.
 const MAX_EXPONENT: f64 = 200.0;
 /// Stoichiometric amounts and orders within this of a whole number are that number.
@@ -241,6 +243,7 @@ impl Reaction {
         check_mass(&fields, &name, &consumed, &made, species);
         let rate_constant = fields
             .child("rate_constant")
+            .filter(|_| (0.0..=HIGHEST_ORDER).contains(&order))
             .and_then(|child| fields.take(RateConstant::read(&child, Dimension::rate_constant(order))));
         let heat = fields.child("heat").map_or(f64::NAN, |child| fields.take(read_heat(&child)).unwrap_or(f64::NAN));
         let reverse = read_equilibrium(&fields, &name, &consumed, &made, &orders, heat);
