@@ -46,15 +46,22 @@ impl Spline {
         let secants: Vec<f64> = self.y.windows(2).zip(&widths).map(|(w, h)| (w[1] - w[0]) / h).collect();
         let curvature = |k: usize| {
             let k = k.clamp(1, n - 2);
-            (2.0 * (secants[k] - secants[k - 1]) / (widths[k] + widths[k - 1])).abs()
+            2.0 * (secants[k] - secants[k - 1]) / (widths[k] + widths[k - 1])
         };
         // an end piece has one curvature at its own end: it takes the next one inwards for the other
-        let smaller = |k: usize| match k {
-            0 => curvature(1).min(curvature(2)),
-            k if k == n - 2 => curvature(n - 2).min(curvature(n - 3)),
-            k => curvature(k).min(curvature(k + 1)),
+        let both = |k: usize| match k {
+            0 => (curvature(1), curvature(2)),
+            k if k == n - 2 => (curvature(n - 2), curvature(n - 3)),
+            k => (curvature(k), curvature(k + 1)),
         };
-        let excess: Vec<f64> = (0..n - 1).map(|k| EXCESS * widths[k] * widths[k] * smaller(k)).collect();
+        // how far below and above the values at its ends a piece may go: only where it bends that way throughout
+        let excess = |k: usize| {
+            let (a, b) = both(k);
+            let smaller = if a * b > 0.0 { a.abs().min(b.abs()) } else { 0.0 };
+            let most = EXCESS * widths[k] * widths[k] * smaller;
+            if a > 0.0 { (most, 0.0) } else { (0.0, most) }
+        };
+        let excess: Vec<(f64, f64)> = (0..n - 1).map(excess).collect();
         let mut limited: Option<Vec<f64>> = None;
         for _ in 0..n {
             let wild: Vec<usize> = (0..n - 1).filter(|k| self.overshoots(*k, excess[*k])).collect();
@@ -70,12 +77,12 @@ impl Spline {
     }
 
     /// Whether a piece leaves the values at its ends by more than a smooth extremum does.
-    fn overshoots(&self, k: usize, excess: f64) -> bool {
+    fn overshoots(&self, k: usize, (below, above): (f64, f64)) -> bool {
         let (piece, h) = (self.piece(k), self.x[k + 1] - self.x[k]);
         let (low, high) = (self.y[k].min(self.y[k + 1]), self.y[k].max(self.y[k + 1]));
-        let margin = excess + 1e-13 * high.abs().max(low.abs()); // and rounding
+        let rounding = 1e-13 * high.abs().max(low.abs());
         let inside = piece.turning_points().into_iter().filter(|s| *s > 0.0 && *s < h);
-        inside.map(|s| piece.at(s)).any(|value| value > high + margin || value < low - margin)
+        inside.map(|s| piece.at(s)).any(|value| value > high + above + rounding || value < low - below - rounding)
     }
 
     /// The value at x; beyond the knots the end pieces go on, no faster than `BEYOND` allows.

@@ -58,6 +58,8 @@ pub const ABOUT: About = About {
 const DEFAULT_SPACING: &str = "equal_area";
 /// Loosest and tightest relative tolerance that the integrator keeps its promises at.
 const TOLERANCES: (f64, f64) = (1e-12, 1e-2);
+/// Thinnest outermost tube, as a share of R: thinner ones hold so little flow that no step along z is small enough.
+const THINNEST: f64 = 1e-6;
 /// Steepest grading: beyond this the innermost tube is all there is.
 const STEEPEST: f64 = 3.0;
 
@@ -115,7 +117,13 @@ impl Numerics {
         if grading > STEEPEST {
             outside("grading", format!("at most {STEEPEST}"));
         }
-        let spacing = match fields.word("spacing") {
+        let spacing_word = fields.word("spacing");
+        #[expect(clippy::cast_precision_loss, reason = "tubes are at most a few thousand")]
+        let steepest = -THINNEST.ln() / (stream_tubes as f64).ln();
+        if ["towards_wall", "both_ends"].contains(&spacing_word) && grading > steepest && fields.has("grading") {
+            outside("grading", format!("at most {steepest:.2} with {stream_tubes} stream tubes"));
+        }
+        let spacing = match spacing_word {
             "uniform" => Spacing::Uniform,
             "towards_wall" => Spacing::TowardsWall(grading),
             "both_ends" => Spacing::BothEnds(grading),
