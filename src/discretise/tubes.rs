@@ -1,6 +1,6 @@
 //! Properties and sources of all stream tubes, several at once.
 //!
-//! The laws are chosen at run time, once for [`WIDTH`] stream tubes, on processors that have 256-bit vectors; on
+//! The laws are chosen at run time, once for `WIDTH` stream tubes, on processors that have 256-bit vectors; on
 //! others one by one, which agrees to rounding.
 
 use super::layout::Layout;

@@ -12,20 +12,20 @@ const FLUID: (f64, f64) = (1e-12, 1e15);
 
 /// A profile or a heat that needs a viscosity, and a viscosity that needs a polymer.
 pub(super) fn check_viscosity(fields: &Fields<'_>, material: &Material, flow: Flow) {
-    let missing = |what: &str| {
-        let (at, key) = (fields.place_of("flow"), what.to_owned());
+    let missing = |key: &str, what: &str| {
+        let (at, key) = (fields.place_in("flow", key), what.to_owned());
         fields.problem(SpecError::Needs { at, key, needs: "`mixture.viscosity`".to_owned() });
     };
     if !material.mixture.has_viscosity() {
         if flow.profile == Profile::FromViscosity {
-            missing("profile: from_viscosity");
+            missing("profile", "profile: from_viscosity");
         }
         if flow.viscous_heating {
-            missing("viscous_heating: true");
+            missing("viscous_heating", "viscous_heating: true");
         }
     }
     if material.mixture.viscosity_needs_polymer() && !material.has_polymer() {
-        let (at, key) = (fields.place_of("mixture"), "mixture.viscosity".to_owned());
+        let (at, key) = (fields.place_in("mixture", "viscosity"), "mixture.viscosity".to_owned());
         let needs = "a `polymerization` that says which species is the polymer".to_owned();
         fields.problem(SpecError::Needs { at, key, needs });
     }
@@ -53,12 +53,7 @@ pub(super) fn check_feed_viscosity(fields: &Fields<'_>, material: &Material, fee
         material.mixture.viscosity(&material.fluid(&state, &fractions))
     };
     let (here, warmer) = (at(0.0), at(10.0));
-    let place = || {
-        fields.child("mixture").map_or_else(
-            || fields.block().place(),
-            |m| m.child_of("viscosity").map_or_else(|| m.place(), |v| v.place()),
-        )
-    };
+    let place = || fields.place_in("mixture", "viscosity");
     let show = |value| units::write(value, Dimension::VISCOSITY);
     if !(FLUID.0..=FLUID.1).contains(&here) {
         let needs =
@@ -93,21 +88,19 @@ pub(super) fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits:
     let outside = temperature < limits.lowest_temperature || temperature > limits.highest_temperature;
     if outside {
         let show = |value| units::write(value, Dimension::TEMPERATURE);
-        let place = fields.child("feed").and_then(|feed| feed.child_of("temperature")).map(|child| child.place());
         let needs = format!(
             "to lie within `limits.temperature`, {} to {}, but is {}",
             show(limits.lowest_temperature),
             show(limits.highest_temperature),
             show(temperature)
         );
-        let at = place.unwrap_or_else(|| fields.place_of("feed"));
+        let at = fields.place_in("feed", "temperature");
         fields.problem(SpecError::Needs { at, key: "feed.temperature".to_owned(), needs });
     }
     if let Some(pressure) = feed.pressure
         && pressure < limits.lowest_pressure
     {
-        let place = fields.child("feed").and_then(|feed| feed.child_of("pressure")).map(|child| child.place());
-        let (at, key) = (place.unwrap_or_else(|| fields.place_of("feed")), "feed.pressure".to_owned());
+        let (at, key) = (fields.place_in("feed", "pressure"), "feed.pressure".to_owned());
         fields.problem(SpecError::Needs { at, key, needs: "to lie above `limits.pressure.lowest`".to_owned() });
     }
 }

@@ -2,7 +2,7 @@
 
 use super::kinetics::Scheme;
 use super::species::SpeciesList;
-use crate::spec::{About, Block, Bound, Fields, Key, Need, Reported, SpecError, Takes, unknown_name};
+use crate::spec::{About, Block, Bound, Fields, Key, Need, Place, Reported, SpecError, Takes, unknown_name};
 use crate::units::Dimension;
 
 /// Fractions that add up to 1 within this are meant to: they are typed with six digits.
@@ -231,10 +231,15 @@ fn read_values(
         Basis::Concentration => (Dimension::CONCENTRATION, Bound::NotNegative),
     };
     let (mut values, mut rest, mut failed) = (Vec::new(), None, false);
-    for (name, item) in block.pairs() {
+    for (name, location, item) in block.keyed() {
         let known = species.names.iter().position(|known| known == name);
         let Some(k) = known else {
-            fields.problem(unknown_name(item.place(), "species", name, &species.names));
+            fields.problem(unknown_name(
+                Place { location, path: item.path().clone() },
+                "species",
+                name,
+                &species.names,
+            ));
             failed = true;
             continue;
         };

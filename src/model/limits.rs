@@ -1,7 +1,7 @@
 //! Limits that end a run, as a result that says which and where (spec page, §5).
 
 use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes};
-use crate::units::{self, Dimension};
+use crate::units::Dimension;
 
 pub const ABOUT: About = About {
     kind: "limits",
@@ -110,9 +110,9 @@ impl Limits {
         let open = temperature.open(&TEMPERATURE);
         let (lowest_temperature, highest_temperature) = (open.quantity("lowest"), open.quantity("highest"));
         if lowest_temperature >= highest_temperature {
-            let show = |value| units::write(value, Dimension::TEMPERATURE);
-            let (at, key) = (temperature.place(), "temperature".to_owned());
-            let (from, to) = (show(lowest_temperature), show(highest_temperature));
+            let typed = |key| open.child(key).and_then(|end| end.node().text().map(str::to_owned)).unwrap_or_default();
+            let (at, key) = (temperature.place(), "limits.temperature".to_owned());
+            let (from, to) = (typed("lowest"), typed("highest"));
             open.problem(SpecError::EmptyRange { at, key, from, to });
         }
         fields.take(open.finish(()));

@@ -189,7 +189,7 @@ impl MixtureBlock {
             let own = species.items.iter().find(|species| species.law(*which).is_some());
             if let (Some(_), Some(own)) = (law, own) {
                 fields.problem(SpecError::PropertyTwice {
-                    at: own.place.clone(),
+                    at: own.law_place(*which).clone(),
                     property: which.key(),
                     species: own.name.clone(),
                     first: fields.place_of(which.key()).location,
@@ -218,7 +218,8 @@ impl MixtureBlock {
             if which == Which::Diffusivity && components.len() < 2 && own.is_none() {
                 return None;
             }
-            for species in components {
+            let nowhere = components.iter().all(|species| species.law(which).is_none());
+            for species in components.iter().take(if nowhere { 1 } else { components.len() }) {
                 match species.law(which) {
                     Some(law) => {
                         let path = format!("species.{}.{}", species.name, which.key());
@@ -230,7 +231,7 @@ impl MixtureBlock {
                             at: species.place.clone(),
                             species: species.name.clone(),
                             property: which.key(),
-                            because: format!("or `mixture` needs `{}` for all", which.key()),
+                            because: "since `mixture` gives none for all".to_owned(),
                         });
                     }
                 }

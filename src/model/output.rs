@@ -118,7 +118,7 @@ fn read_place(name: &str, block: &Block<'_>, sections: &[Section]) -> Result<Out
     let (start, length, of) = match section {
         Some(Some(s)) => {
             let start = sections[..s].iter().map(|section| section.length).sum();
-            (start, sections[s].length, names[s].clone())
+            (start, sections[s].length, format!("section `{}`", names[s]))
         }
         Some(None) => return fields.finish(Err(Reported)).and_then(|nothing| nothing),
         None => (0.0, sections.iter().map(|section| section.length).sum(), "the reactor".to_owned()),

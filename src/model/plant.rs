@@ -256,7 +256,7 @@ impl Parts<'_> {
         let small: Vec<&Species> = present.iter().map(|k| &self.species.items[*k]).collect();
         let conversion_of = match output.conversion_of {
             Some(k) if new(k).is_none() => {
-                let (at, key) = (fields.place_of("output"), "conversion_of".to_owned());
+                let (at, key) = (fields.place_in("output", "conversion_of"), "conversion_of".to_owned());
                 let needs = format!("a species that is fed: `{}` is not there", self.species.names[k]);
                 fields.problem(SpecError::Needs { at, key, needs });
                 return Err(Reported);
@@ -368,7 +368,7 @@ fn missing_mass(
 ) -> Result<f64, Reported> {
     let free = free_volume(material, masses, temperature);
     if free < -VOLUME_TOLERANCE {
-        let (at, key) = (fields.place_of("feed"), "concentrations".to_owned());
+        let (at, key) = (fields.place_in("feed", "concentrations"), "concentrations".to_owned());
         fields.problem(SpecError::NoRest { at, key, sum: 1.0 - free });
         return Err(Reported);
     }
@@ -378,7 +378,7 @@ fn missing_mass(
 fn check_volume(fields: &Fields<'_>, material: &Material, masses: &[f64], temperature: f64) -> Result<(), Reported> {
     let free = free_volume(material, masses, temperature);
     if free.abs() > VOLUME_TOLERANCE {
-        let (at, key) = (fields.place_of("feed"), "concentrations".to_owned());
+        let (at, key) = (fields.place_in("feed", "concentrations"), "concentrations".to_owned());
         fields.problem(SpecError::SumNotOne { at, key, sum: 1.0 - free });
         return Err(Reported);
     }

@@ -81,8 +81,9 @@ impl Section {
             match Self::read(item, duct, walls, coolants) {
                 Ok(section) => {
                     if let Some(first) = sections.iter().position(|other| other.name == section.name) {
-                        let (at, name) = (item.place(), section.name.clone());
-                        let first = items[first].node().location.clone();
+                        let place = |item: &Block<'_>| item.child_of("name").map_or(item.place(), |name| name.place());
+                        let (at, name) = (place(item), section.name.clone());
+                        let first = place(&items[first]).location;
                         let _ = block.refuse(SpecError::NameTaken { at, name, first });
                         failed = true;
                     }
@@ -108,7 +109,7 @@ impl Section {
         coolants: &Coolants,
     ) -> Result<Self, Reported> {
         if let Some(junction) = block.child_of("junction") {
-            let what = format!("{} (a junction)", block.path());
+            let what = format!("junction: {}", junction.node().text().unwrap_or_default());
             return Err(block.refuse(SpecError::NotInThisVersion { at: junction.place(), what }));
         }
         let fields = block.open(&ABOUT);

@@ -111,9 +111,22 @@ pub struct Species {
     heat_capacity: Option<Property>,
     conductivity: Option<Property>,
     diffusivity: Option<Property>,
+    law_places: [Place; 4],
 }
 
 impl Species {
+    /// Where the law for a property stands; the species itself where it gives none.
+    #[must_use]
+    pub fn law_place(&self, which: Which) -> &Place {
+        let [density, heat_capacity, conductivity, diffusivity] = &self.law_places;
+        match which {
+            Which::Density => density,
+            Which::HeatCapacity => heat_capacity,
+            Which::Conductivity => conductivity,
+            Which::Diffusivity => diffusivity,
+        }
+    }
+
     /// The law that the species gives for a property.
     #[must_use]
     pub fn law(&self, which: Which) -> Option<&Property> {
@@ -136,6 +149,7 @@ impl Species {
             heat_capacity: None,
             conductivity: None,
             diffusivity: None,
+            law_places: std::array::from_fn(|_| block.place()),
         }
     }
 
@@ -161,6 +175,7 @@ impl Species {
             heat_capacity: law(Which::HeatCapacity),
             conductivity: law(Which::Conductivity),
             diffusivity: law(Which::Diffusivity),
+            law_places: ["density", "heat_capacity", "conductivity", "diffusivity"].map(|key| fields.place_of(key)),
         };
         fields.finish(species)
     }

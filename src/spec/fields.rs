@@ -83,6 +83,10 @@ impl<'a> Fields<'a> {
 
     fn measured(&self, key: &'static str, dimension: Dimension, bound: Bound) -> Option<f64> {
         let child = self.child(key)?;
+        if self.is_cut(key) {
+            self.failed.set(true);
+            return None;
+        }
         match child.measure(key, dimension, bound) {
             Ok(value) => Some(value),
             Err(Reported) => {
@@ -240,6 +244,13 @@ impl<'a> Fields<'a> {
         }
     }
 
+    /// The place of a key's value in a block below this one; of the block where the key is absent.
+    #[must_use]
+    pub fn place_in(&self, block: &'static str, key: &str) -> Place {
+        let child = self.child(block).and_then(|child| child.child_of(key));
+        child.map_or_else(|| self.place_of(block), |child| child.place())
+    }
+
     /// Notes a mistake of this block.
     pub fn problem(&self, error: SpecError) {
         self.failed.set(true);
@@ -295,15 +306,20 @@ impl<'a> Fields<'a> {
     }
 
     fn check_shape(&self) {
-        let node = self.block.node();
-        let scalar_will_do = self.about.key("value").is_some() && node.text().is_some();
-        if node.entries().is_none() && !scalar_will_do {
+        if !self.has_right_shape() {
             self.problem(self.block.wrong_shape(self.block.last_step(), "a block of keys"));
         }
     }
 
+    /// Whether it is a block, or a scalar that stands for the key `value`.
+    fn has_right_shape(&self) -> bool {
+        let node = self.block.node();
+        node.entries().is_some() || self.about.key("value").is_some() && node.text().is_some()
+    }
+
     fn check_keys(&self) {
-        for entry in self.block.node().entries().unwrap_or_default() {
+        let entries = self.block.node().entries().unwrap_or_default();
+        for (position, entry) in entries.iter().enumerate() {
             self.check_provenance(entry);
             let at = Place { location: entry.key_location.clone(), path: self.block.path().child(&entry.key) };
             match self.about.key(&entry.key) {
@@ -313,6 +329,8 @@ impl<'a> Fields<'a> {
                 }
                 Some(key) => self.block.reader().given(self.about.kind, key.name),
                 None if PROVENANCE.contains(&entry.key.as_str()) => {}
+                // of a text that several commas cut to pieces the first is reported
+                None if entry.bare && position > 0 && self.is_piece(&entries[position - 1]) => {}
                 None if entry.bare => {
                     self.problem(SpecError::CommaEndedText { at, key: entry.key.clone() });
                 }
@@ -343,22 +361,46 @@ impl<'a> Fields<'a> {
         self.problem(error);
     }
 
+    /// Whether an entry is no key, but what a comma cut off the text before it.
+    fn is_piece(&self, entry: &Entry) -> bool {
+        entry.bare && self.about.key(&entry.key).is_none() && !PROVENANCE.contains(&entry.key.as_str())
+    }
+
+    /// Whether a comma cut the value of a key to pieces, which is reported.
+    fn is_cut(&self, key: &str) -> bool {
+        let entries = self.block.node().entries().unwrap_or_default();
+        entries.windows(2).any(|pair| pair[0].key == key && self.is_piece(&pair[1]))
+    }
+
+    /// Whether an unknown key of the block, which is reported, most likely stands for this one.
+    fn is_misspelt(&self, key: &str) -> bool {
+        let entries = self.block.node().entries().unwrap_or_default();
+        let unknown = entries.iter().filter(|entry| self.about.key(&entry.key).is_none() && !entry.bare);
+        unknown.filter_map(|entry| nearest(&entry.key, self.usable_keys())).any(|meant| meant == key)
+    }
+
     fn usable_keys(&self) -> impl Iterator<Item = &'static str> {
         self.about.keys.iter().filter(|key| key.need != Need::Later).map(|key| key.name)
     }
 
     fn check_needs(&self) {
-        if self.block.node().entries().is_none() && self.block.node().text().is_none() {
-            return; // reported as a wrong shape
+        if !self.has_right_shape() {
+            return; // reported
+        }
+        let is_later = |entry: &Entry| self.about.key(&entry.key).is_some_and(|key| key.need == Need::Later);
+        if self.block.node().entries().unwrap_or_default().iter().any(is_later) {
+            return; // reported; a later version has other needs
         }
         for (k, key) in self.about.keys.iter().enumerate() {
             match key.need {
-                Need::Required(example) if !self.has(key.name) => self.problem(SpecError::MissingKey {
-                    at: self.block.place(),
-                    block: self.block.name(),
-                    key: key.name,
-                    example,
-                }),
+                Need::Required(example) if !self.has(key.name) && !self.is_misspelt(key.name) => {
+                    self.problem(SpecError::MissingKey {
+                        at: self.block.place(),
+                        block: self.block.name(),
+                        key: key.name,
+                        example,
+                    })
+                }
                 Need::OneOf(group) | Need::AtMostOneOf(group) if self.is_first_of(group, k) => {
                     self.check_group(group, matches!(key.need, Need::OneOf(_)));
                 }
@@ -382,7 +424,7 @@ impl<'a> Fields<'a> {
         let members = || self.about.keys.iter().filter(|key| Self::group_of(key) == Some(group)).map(|key| key.name);
         let given: Vec<&'static str> = members().filter(|key| self.has(key)).collect();
         match given[..] {
-            [] if one_is_due => {
+            [] if one_is_due && !members().any(|key| self.is_misspelt(key)) => {
                 let (at, block) = (self.block.place(), self.block.name());
                 self.problem(SpecError::NoneOf { at, block, keys: members().collect() });
             }

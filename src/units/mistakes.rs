@@ -17,7 +17,7 @@ impl Parser<'_> {
         let more: Vec<&str> = more.iter().map(|range| piece(range.clone())).collect();
         let more = more.join(" ");
         let head = &self.text[self.start..above.start];
-        let tail = self.rest();
+        let tail = closing_what_is_open(head, self.rest());
         let first = piece(above.clone());
         let middle = piece(above.end..slash);
         let last = piece(below);
@@ -81,6 +81,22 @@ impl Parser<'_> {
     }
 }
 
+/// What follows, without parentheses that close what neither it nor what stands before opens.
+fn closing_what_is_open(before: &str, after: &str) -> String {
+    let mut open = before.matches('(').count().saturating_sub(before.matches(')').count());
+    let mut kept = String::new();
+    for c in after.chars() {
+        match c {
+            '(' => open += 1,
+            ')' if open == 0 => continue,
+            ')' => open -= 1,
+            _ => {}
+        }
+        kept.push(c);
+    }
+    kept
+}
+
 #[cfg(test)]
 mod tests {
     use super::super::dimension::Dimension;
@@ -97,6 +113,7 @@ mod tests {
             ("J/kg/m2 K", "J/kg/(m2 K)", "J K/kg/m2"),
             ("kg/(W/m2 K)", "kg/(W/(m2 K))", "kg/(W K/m2)"),
             ("J/mol m s/kg", "J/(mol m s)/kg", "J m s/mol/kg"),
+            ("W/m K)", "W/(m K)", "W K/m"),
         ] {
             let error = read(&format!("1 {unit}"), Dimension::RATIO).expect_err(unit);
             let UnitError::AmbiguousQuotient { below: first, above: second, .. } = &error else {

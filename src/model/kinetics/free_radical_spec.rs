@@ -2,11 +2,13 @@
 
 use super::free_radical::{FreeRadical, Initiator, Thermal, Transfer};
 use super::gel_effect::{self, GelEffect};
+use super::heat::{HEAT, read_heat};
 use super::rate_constant::{self, RateConstant};
-use super::reaction::{HEAT, read_heat};
 use crate::model::property::KIND;
 use crate::model::species::SpeciesList;
-use crate::spec::{About, Block, Bound, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes, unknown_name};
+use crate::spec::{
+    About, Block, Bound, Fields, Key, Need, Node, Place, ReadWarning, Reported, SpecError, Takes, unknown_name,
+};
 use crate::units::{self, Dimension};
 
 pub const ABOUT: About = About {
@@ -239,6 +241,7 @@ impl FreeRadical {
         let heat = fields.child("heat").and_then(|child| fields.take(read_heat(&child)));
         if let Some(k) = polymer
             && species.items[k].molar_mass.is_some_and(|mass| !mass.is_nan())
+            && monomer != polymer
         {
             let (at, key) = (species.items[k].place.clone(), "molar_mass".to_owned());
             let with = format!("the polymer `{}`: it has a distribution", species.names[k]);
@@ -248,7 +251,8 @@ impl FreeRadical {
             && m == p
         {
             let (at, key) = (fields.place_of("polymer"), "polymer".to_owned());
-            fields.problem(SpecError::DoesNotGoWith { at, key, with: "the same species as monomer".to_owned() });
+            let with = format!("`monomer: {}`: they are two species", species.names[m]);
+            fields.problem(SpecError::DoesNotGoWith { at, key, with });
         }
         let unit_mass = monomer.map(|m| {
             species.items[m].molar_mass.unwrap_or_else(|| {
@@ -319,7 +323,7 @@ fn read_termination(fields: &Fields<'_>) -> ([Option<RateConstant>; 2], f64) {
         (rate("by_combination"), rate("by_disproportionation"), rate("total"));
     let share = block.optional_quantity("combination_share");
     let place = || child.place();
-    let both = |one, other| SpecError::BothOf { at: place(), block: child.name(), one, other };
+    let both = |one, other| SpecError::BothOf { at: block.place_of(other), block: child.name(), one, other };
     if block.has("total") {
         if block.has("by_combination") {
             block.problem(both("total", "by_combination"));
@@ -361,7 +365,7 @@ fn read_initiators(fields: &Fields<'_>, species: &SpeciesList) -> Vec<Initiator>
         let dissociation = block
             .child("dissociation")
             .and_then(|child| block.take(RateConstant::read(&child, Dimension::rate_constant(1.0))));
-        let known = known_species(fields, &item, name, species);
+        let known = known_species(fields, "initiators", &item, name, species);
         let read = fields.take(block.finish(()));
         if let (Some(()), Some(species), Some(dissociation)) = (read, known, dissociation) {
             initiators.push(Initiator { species, efficiency, dissociation });
@@ -375,11 +379,11 @@ fn read_transfer(fields: &Fields<'_>, species: &SpeciesList, polymer: Option<usi
     let mut all = Vec::new();
     for (name, item) in child.named() {
         if polymer.is_some_and(|p| species.names[p] == name) {
-            let what = format!("{} (transfer to polymer)", item.path());
+            let what = item.path().to_string();
             fields.problem(SpecError::NotInThisVersion { at: item.place(), what });
             continue;
         }
-        let known = known_species(fields, &item, name, species);
+        let known = known_species(fields, "transfer", &item, name, species);
         if item.node().number().is_some() {
             let (at, key) = (item.place(), name.to_owned());
             let needs =
@@ -401,7 +405,14 @@ fn read_transfer(fields: &Fields<'_>, species: &SpeciesList, polymer: Option<usi
     all
 }
 
-fn known_species(fields: &Fields<'_>, item: &Block<'_>, name: &str, species: &SpeciesList) -> Option<usize> {
+/// The species that an item of a block is named after.
+fn known_species(
+    fields: &Fields<'_>,
+    block: &str,
+    item: &Block<'_>,
+    name: &str,
+    species: &SpeciesList,
+) -> Option<usize> {
     let known = species.names.iter().position(|known| known == name);
     match known {
         Some(k) if species.items[k].molar_mass.is_none() => {
@@ -414,7 +425,13 @@ fn known_species(fields: &Fields<'_>, item: &Block<'_>, name: &str, species: &Sp
             });
         }
         Some(_) => {}
-        None => fields.problem(unknown_name(item.place(), "species", name, &species.names)),
+        None => {
+            let typed = fields.block().node().get(block).and_then(Node::entries).unwrap_or_default();
+            let entry = typed.iter().find(|entry| entry.key == name);
+            let location = entry.map_or(item.node().location.clone(), |entry| entry.key_location.clone());
+            let at = Place { location, path: item.path().clone() };
+            fields.problem(unknown_name(at, "species", name, &species.names));
+        }
     }
     known
 }

@@ -4,6 +4,7 @@ pub mod exponential;
 pub mod free_radical;
 pub mod free_radical_spec;
 pub mod gel_effect;
+pub mod heat;
 pub mod rate_constant;
 pub mod reaction;
 

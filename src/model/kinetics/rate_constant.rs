@@ -31,7 +31,10 @@ impl RateConstant {
     /// # Errors
     /// What the law's own reader finds.
     pub fn read(block: &Block<'_>, subject: Dimension) -> Result<Self, Reported> {
-        let plain = if block.node().entries().is_some() { &ARRHENIUS } else { &constant::ABOUT };
+        let has = |key: &str| block.node().get(key).is_some();
+        let shifts = ["at", "prefactor", "activation_energy", "activation_temperature"].into_iter().any(has);
+        let plain =
+            if shifts || block.node().entries().is_some() && !has("value") { &ARRHENIUS } else { &constant::ABOUT };
         let about = block.kind("rate constant", KINDS, Some(plain))?;
         let form = match about.kind {
             "arrhenius" => Form::Arrhenius(Arrhenius::read(block, about, subject)?),

@@ -1,10 +1,13 @@
 //! Reactions of any stoichiometry and order, reversible or not (model page, §6).
 
+use super::heat::{HEAT, read_heat};
 use super::rate_constant::{self, RateConstant};
 use crate::model::GAS_CONSTANT;
 use crate::model::number::Number;
 use crate::model::species::SpeciesList;
-use crate::spec::{About, Block, Bound, Fields, Key, Need, ReadWarning, Reported, SpecError, Takes, unknown_name};
+use crate::spec::{
+    About, Block, Bound, Fields, Key, Need, Place, ReadWarning, Reported, SpecError, Takes, unknown_name,
+};
 use crate::units::{self, Dimension};
 
 /// Mass that a reaction with molar masses may lose or gain, relative (contract: 0.1 %).
@@ -69,28 +72,6 @@ pub const ABOUT: About = About {
             takes: Takes::Block(&HEAT),
             need: Need::Required("-85 kJ/mol"),
             meaning: "heat per mole of extent, negative for an exothermic reaction",
-        },
-    ],
-};
-
-/// A heat of reaction.
-pub const HEAT: About = About {
-    kind: "heat",
-    summary: "heat per mole, negative for an exothermic reaction",
-    equation: "",
-    source: "",
-    keys: &[
-        Key {
-            name: "value",
-            takes: Takes::Quantity(Dimension::MOLAR_ENERGY, Bound::Any),
-            need: Need::Required("-85 kJ/mol"),
-            meaning: "the heat",
-        },
-        Key {
-            name: "at",
-            takes: Takes::Quantity(Dimension::TEMPERATURE, Bound::NotNegative),
-            need: Need::Later,
-            meaning: "the temperature it belongs to",
         },
     ],
 };
@@ -205,20 +186,22 @@ impl Reaction {
             return Err(block.refuse(block.wrong_shape("reactions", "a list, one reaction an item")));
         }
         let mut reactions: Vec<Self> = Vec::new();
+        let mut names: Vec<(String, Place)> = Vec::new();
         let mut failed = false;
-        let items = block.items();
-        for item in &items {
-            match Self::read(item, species, polymer) {
-                Ok(reaction) if reactions.iter().any(|other| other.name == reaction.name) => {
-                    let first = reactions.iter().position(|other| other.name == reaction.name).unwrap_or(0);
-                    let first = items[first].node().location.clone();
-                    let (at, name) = (item.place(), reaction.name);
-                    let _ = block.refuse(SpecError::NameTaken { at, name, first });
-                    failed = true;
-                }
-                Ok(reaction) => reactions.push(reaction),
-                Err(Reported) => failed = true,
+        for item in block.items() {
+            let Ok(reaction) = Self::read(&item, species, polymer) else {
+                failed = true;
+                continue;
+            };
+            let at = item.child_of("name").map_or(item.place(), |name| name.place());
+            if let Some((name, first)) = names.iter().find(|(name, _)| *name == reaction.name) {
+                let (name, first) = (name.clone(), first.location.clone());
+                let _ = block.refuse(SpecError::NameTaken { at, name, first });
+                failed = true;
+                continue;
             }
+            names.push((reaction.name.clone(), at));
+            reactions.push(reaction);
         }
         if failed { Err(Reported) } else { Ok(reactions) }
     }
@@ -229,7 +212,12 @@ impl Reaction {
         let _ = fields.text("name");
         let consumed = amounts(&fields, "consumes", species, polymer, Bound::Positive);
         let made = amounts(&fields, "makes", species, polymer, Bound::Positive);
-        let mut orders = amounts(&fields, "orders", species, polymer, Bound::NotNegative);
+        let orders = amounts(&fields, "orders", species, polymer, Bound::NotNegative);
+        let (Some(consumed), Some(made), Some(mut orders)) = (consumed, made, orders) else {
+            // neither mass nor the dimension of the rate constant is known; the heat can be read
+            let _ = fields.child("heat").map(|child| read_heat(&child));
+            return Err(Reported);
+        };
         if !fields.has("orders") {
             orders = consumed.iter().map(|(k, _)| (*k, 1.0)).collect();
         }
@@ -330,48 +318,40 @@ impl Reaction {
     }
 }
 
-/// Reads a heat of reaction [J/mol]: one value or a block.
-///
-/// # Errors
-/// The value is missing or of the wrong dimension.
-pub(in crate::model) fn read_heat(block: &Block<'_>) -> Result<f64, Reported> {
-    let fields = block.open(&HEAT);
-    block.trace();
-    let heat = fields.quantity("value");
-    fields.finish(heat)
-}
-
-/// Species with amounts or orders.
+/// Species with amounts or orders; none where something is wrong with them, which is noted.
 fn amounts(
     fields: &Fields<'_>,
     key: &'static str,
     species: &SpeciesList,
     polymer: Option<usize>,
     bound: Bound,
-) -> Vec<(usize, f64)> {
-    let Some(child) = fields.child(key) else { return Vec::new() };
+) -> Option<Vec<(usize, f64)>> {
+    let Some(child) = fields.child(key) else { return Some(Vec::new()) };
     if child.node().entries().is_none() {
         fields.problem(child.wrong_shape(key, "a block of species with numbers, such as `{acid: 1}`"));
+        return None;
     }
+    let items = child.keyed();
     let mut amounts = Vec::new();
-    for (name, block) in child.pairs() {
-        let amount = fields.take(block.measure(name, Dimension::RATIO, bound)).unwrap_or(f64::NAN);
-        if amount > 9.0 {
-            let (at, key) = (block.place(), name.to_owned());
+    for (name, location, block) in &items {
+        let amount = fields.take(block.measure(name, Dimension::RATIO, bound));
+        if amount.is_some_and(|amount| amount > 9.0) {
+            let (at, key) = (block.place(), (*name).to_owned());
             let text = block.node().text().unwrap_or_default().to_owned();
             fields.problem(SpecError::OutOfBounds { at, key, text, bound: "at most 9".to_owned() });
+            continue;
         }
+        let at = Place { location: location.clone(), path: block.path().clone() };
         match species.names.iter().position(|known| known == name) {
             Some(k) if polymer == Some(k) => {
-                let (at, key) = (block.place(), name.to_owned());
                 let with = "`reactions`: a polymer changes by its scheme alone".to_owned();
-                fields.problem(SpecError::DoesNotGoWith { at, key, with });
+                fields.problem(SpecError::DoesNotGoWith { at, key: (*name).to_owned(), with });
             }
-            Some(k) => amounts.push((k, amount)),
-            None => fields.problem(unknown_name(block.place(), "species", name, &species.names)),
+            Some(k) => amounts.extend(amount.map(|amount| (k, amount))),
+            None => fields.problem(unknown_name(at, "species", name, &species.names)),
         }
     }
-    amounts
+    (amounts.len() == items.len()).then_some(amounts)
 }
 
 /// Every species of a rate law is counted in moles, a catalyst's too.
@@ -424,7 +404,8 @@ fn check_mass(
             let (consumed, made) = (total(consumed, &atoms), total(made, &atoms));
             if (consumed - made).abs() > ATOM_TOLERANCE {
                 let (reaction, element) = (name.to_owned(), element.to_owned());
-                fields.problem(SpecError::ElementNotBalanced { at: at.clone(), reaction, element, consumed, made });
+                fields.problem(SpecError::ElementNotBalanced { at, reaction, element, consumed, made });
+                return; // one slip in an amount leaves several elements wrong
             }
         }
         return;

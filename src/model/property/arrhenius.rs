@@ -94,7 +94,7 @@ impl Arrhenius {
         };
         let at = fields.optional_quantity("at");
         let (value, inverse) = if fields.has("prefactor") {
-            if at.is_some() {
+            if at.is_some() && !fields.has("value") {
                 needs("at", "`value`, not `prefactor`");
             }
             (fields.quantity("prefactor"), 0.0)

@@ -200,13 +200,17 @@ fn quadrature<N: Number>(law: impl Fn(N) -> N, from: f64, to: N) -> N {
 
 /// The coefficients (a_k, b_k) of a law in the lists `a` and `b`; `b` is 0 where it is not given.
 pub(in crate::model) fn coefficient_pairs(fields: &Fields<'_>) -> Vec<(f64, f64)> {
-    let a = fields.numbers("a").unwrap_or_default();
-    let b = fields.numbers("b").unwrap_or_else(|| vec![0.0; a.len()]);
+    let (Some(a), b) = (fields.numbers("a"), fields.numbers("b")) else { return Vec::new() };
+    let b = match b {
+        None if fields.has("b") => return Vec::new(), // reported
+        None => vec![0.0; a.len()],
+        Some(b) => b,
+    };
     if a.len() != b.len() {
         let (at, key) = (fields.place_of("b"), "b".to_owned());
         fields.problem(SpecError::LengthsDiffer { at, key, found: b.len(), other: "a", wanted: a.len() });
     }
-    if fields.has("a") && a.is_empty() {
+    if a.is_empty() {
         let (at, key) = (fields.place_of("a"), "a".to_owned());
         fields.problem(SpecError::Needs { at, key, needs: "at least one coefficient".to_owned() });
     }
@@ -224,9 +228,9 @@ pub(in crate::model) fn read_range(block: &Block<'_>) -> Result<Option<(f64, f64
     let fields = range.open(&RANGE);
     let (from, to) = (fields.quantity("from"), fields.quantity("to"));
     if from >= to {
-        let show = |value| units::write(value, Dimension::TEMPERATURE);
+        let typed = |key| fields.child(key).and_then(|end| end.node().text().map(str::to_owned)).unwrap_or_default();
         let (at, key) = (range.place(), "valid".to_owned());
-        fields.problem(SpecError::EmptyRange { at, key, from: show(from), to: show(to) });
+        fields.problem(SpecError::EmptyRange { at, key, from: typed("from"), to: typed("to") });
     }
     fields.finish(Some((from, to)))
 }

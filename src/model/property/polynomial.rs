@@ -45,12 +45,12 @@ impl Polynomial {
     /// A key that is missing, unknown or of the wrong dimension; no coefficient.
     pub fn read(block: &Block<'_>, subject: Dimension) -> Result<Self, Reported> {
         let fields = block.open_for(&ABOUT, subject);
-        let a = fields.numbers("a").unwrap_or_default();
-        if fields.has("a") && a.is_empty() {
+        let a = fields.numbers("a");
+        if a.as_ref().is_some_and(Vec::is_empty) {
             let (at, key) = (fields.place_of("a"), "a".to_owned());
             fields.problem(SpecError::Needs { at, key, needs: "at least one coefficient".to_owned() });
         }
-        let law = Self { a, at: fields.quantity("at") };
+        let law = Self { a: a.unwrap_or_default(), at: fields.quantity("at") };
         super::skip_range(&fields);
         fields.finish(law)
     }

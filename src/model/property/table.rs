@@ -1,7 +1,7 @@
 //! A property given by points: a monotone cubic between them, held outside.
 
 use crate::model::number::Number;
-use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes};
+use crate::spec::{About, Block, Bound, Key, Need, Place, Reported, SpecError, Takes};
 use crate::units::Dimension;
 
 use super::{KIND, VALID};
@@ -159,17 +159,19 @@ fn read_points(block: &Block<'_>, subject: Dimension) -> Result<Vec<(f64, f64)>,
     if failed {
         let _ = block.refuse(block.wrong_shape("points", "temperatures with values"));
     }
-    for (key, key_location, value) in block.keyed() {
-        let temperature = value.measure_key(key, key_location, Dimension::TEMPERATURE);
-        let value = value.measure("points", subject, Bound::NotNegative);
+    for (key, location, point) in block.keyed() {
+        let temperature = point.measure_key(key, location.clone(), Dimension::TEMPERATURE);
+        let value = point.measure("points", subject, Bound::NotNegative);
+        let at = Place { location, path: point.path().clone() };
         match (temperature, value) {
-            (Ok(temperature), Ok(value)) => points.push((temperature, value, key)),
+            (Ok(temperature), Ok(value)) => points.push((temperature, value, key, at)),
             _ => failed = true,
         }
     }
     points.sort_by(|a, b| a.0.total_cmp(&b.0));
     if let Some(twice) = points.windows(2).find(|pair| pair[0].0 >= pair[1].0) {
-        return Err(block.refuse(SpecError::PointTwice { at: block.place(), temperature: twice[1].2.to_owned() }));
+        let (_, _, key, at) = &twice[1];
+        return Err(block.refuse(SpecError::PointTwice { at: at.clone(), temperature: (*key).to_owned() }));
     }
     if failed {
         return Err(Reported);
@@ -177,7 +179,7 @@ fn read_points(block: &Block<'_>, subject: Dimension) -> Result<Vec<(f64, f64)>,
     if points.len() < 2 {
         return Err(block.refuse(SpecError::TooFewPoints { at: block.place() }));
     }
-    Ok(points.into_iter().map(|(temperature, value, _)| (temperature, value)).collect())
+    Ok(points.into_iter().map(|(temperature, value, ..)| (temperature, value)).collect())
 }
 
 #[cfg(test)]
