@@ -18,7 +18,12 @@ const SHELL: [&str; 6] = ["NO_COLOR", "CLICOLOR", "CLICOLOR_FORCE", "FORCE_COLOR
 
 #[test]
 fn every_session_is_answered_to_the_letter() {
-    trycmd::TestCases::new().case("README.md").case("tests/cli/*.md").case("tests/cli/*.toml").env("COLUMNS", "80").run();
+    trycmd::TestCases::new()
+        .case("README.md")
+        .case("tests/cli/*.md")
+        .case("tests/cli/*.toml")
+        .env("COLUMNS", "80")
+        .run();
 }
 
 /// The command, in the folder of the project.
