@@ -19,11 +19,9 @@ use axirad::units::{self, Dimension, UnitError};
 const STAGES: [&str; 5] = ["text", "format", "keys", "values", "meaning"];
 
 /// Mistakes without a file, and why.
-const EXEMPT: [(&str, &str); 4] = [
+const EXEMPT: [(&str, &str); 2] = [
     ("too_large", "the file would have more than 4 MiB; `document.rs` has the test"),
     ("too_many", "the smallest such file is a bomb that slows every tool that looks at it; `document.rs` has the test"),
-    ("not_a_number", "the reader of units has a message of its own for each way of not being a number"),
-    ("heats_differ", "a warning, not a mistake"),
 ];
 
 /// A wrong spec: its name below `specs/wrong`, and what is wrong with it.

@@ -81,8 +81,6 @@ pub enum SpecError {
         error: UnitError,
         key: String,
     },
-    #[error("`{text}` is not a number")]
-    NotANumber { at: Place, key: String, text: String },
     #[error("`{key}` needs a whole number, but is `{text}`")]
     NotWhole { at: Place, key: String, text: String },
     #[error("`{key}` is {text}, but must be {bound}")]
@@ -137,8 +135,6 @@ pub enum SpecError {
     DoesNotGoWith { at: Place, key: String, with: String },
     #[error("the place lies at {z}, outside the {length} of {of}")]
     OutsideLength { at: Place, z: String, length: String, of: String },
-    #[error("the equilibrium of reaction `{reaction}` shifts with {given}, but the reaction's own heat is {own}")]
-    HeatsDiffer { at: Place, reaction: String, given: String, own: String },
 }
 
 /// `a`, `b` or `c`.

@@ -75,7 +75,6 @@ variants! {
     UnknownWord: "unknown_word",
     NotInThisVersion: "not_in_this_version",
     Unit: "unit",
-    NotANumber: "not_a_number",
     NotWhole: "not_whole",
     OutOfBounds: "out_of_bounds",
     FractionAboveOne: "fraction_above_one",
@@ -101,7 +100,6 @@ variants! {
     Needs: "needs",
     DoesNotGoWith: "does_not_go_with",
     OutsideLength: "outside_length",
-    HeatsDiffer: "heats_differ",
 }
 
 impl SpecError {
@@ -156,7 +154,6 @@ impl SpecError {
 
             // ---- values
             Self::Unit { error, .. } => error.help(),
-            Self::NotANumber { .. } => "write it like `40`, `0.5` or `1.2e-3`".into(),
             Self::NotWhole { text, .. } => not_whole(text),
             Self::OutOfBounds { text, bound, .. } => do_you_mean(positive(text, bound)?),
             Self::FractionAboveOne { text, .. } => above_one(text),
@@ -208,9 +205,6 @@ impl SpecError {
             Self::NoSection { .. } => "such as `- {name: tube, length: 4 m, wall: {kind: insulated}}`".into(),
             Self::Needs { .. } | Self::DoesNotGoWith { .. } => return None, // the message says what to do
             Self::OutsideLength { length, .. } => format!("`z` lies between 0 m and {length}"),
-            Self::HeatsDiffer { .. } => {
-                "leave `heat` out of the equilibrium: it then shifts with the reaction's".into()
-            }
         };
         Some(text)
     }
