@@ -70,6 +70,20 @@ fn balances_hold_at_every_tolerance_and_on_every_grid() {
 }
 
 #[test]
+fn heat_of_a_shear_that_changes_the_viscosity_is_counted_at_every_tolerance() {
+    // The heat of shear depends on temperature by way of the viscosity, in the balance and in its integral alike.
+    let mut checks = Checks::default();
+    for profile in ["from_viscosity", "parabolic", "plug"] {
+        for tolerance in [1e-4, 1e-6, 1e-8, 1e-10] {
+            let case =
+                Case::file("checks/viscous_heating_thinning.yaml").set("flow.profile", profile).tolerance(tolerance);
+            hold_balances(&mut checks, &format!("{profile} at {tolerance:e}"), &case, &case.run());
+        }
+    }
+    checks.end();
+}
+
+#[test]
 fn unlike_diffusivities_keep_every_element_in_every_tube() {
     // `balance.mass` is the worst tube's |Σ M n − 1|; elements are those of the mixing cup.
     let run = Case::file("checks/unlike_diffusivities.yaml").run();

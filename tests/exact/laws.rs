@@ -1,5 +1,7 @@
 //! Properties that change with temperature or composition, where a closed form can be had.
 
+use axirad::discretise::terms::conduction::face_conductivity;
+
 use crate::support::{Case, Checks};
 
 #[test]
@@ -79,4 +81,29 @@ fn a_viscosity_that_changes_with_temperature_sets_the_pressure_gradient_of_a_uni
         checks.relative(law, run.number("outlet.viscosity"), 2.0, 1e-10);
         checks.end();
     }
+}
+
+#[test]
+fn the_mixing_cup_has_the_temperature_of_its_enthalpy() {
+    // c_p = 2000 + 10 (T − 400): what the wall took is ṁ ∫ c_p dT down to the cup, though the tubes, of which the
+    // outer ones are cold, have other heat capacities than the core. The mean by mass would be off by 2 K.
+    let law = "{kind: linear, value: 2000 J/(kg K), at: 400 K, slope: 10 J/(kg K2)}";
+    let run =
+        Case::file("checks/graetz.yaml").set("mixture.heat_capacity", law).set("sections.tube.length", "0.1 m").run();
+    let fall = run.number("outlet.temperature") - 400.0;
+    let enthalpy = 2000.0 * fall + 5.0 * fall * fall;
+    let mut checks = Checks::default();
+    let taken = -run.number("wall_heat") / run.number("outlet.mass_flow");
+    // c_p follows T, so the integrator's 1e-8 of 400 K counts against a fall of 20 K.
+    checks.relative("heat taken", enthalpy, taken, 1e-6);
+    checks.end();
+}
+
+#[test]
+fn conductivities_of_neighbours_are_resistances_in_series() {
+    // Half a tube of each: 1/λ is the mean of both; a layer that conducts nothing lets nothing through.
+    let mut checks = Checks::default();
+    checks.relative("1 and 3", face_conductivity(1.0, 3.0), 1.5, 1e-15);
+    checks.within("1 and 1e-12", face_conductivity(1.0, 1e-12), 0.0, 2e-12);
+    checks.end();
 }

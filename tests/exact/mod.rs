@@ -2,6 +2,7 @@
 
 mod diffusion;
 mod explosion;
+mod figures;
 mod laws;
 mod limits;
 mod modes;

@@ -7,6 +7,7 @@ mod exothermic;
 mod flow;
 mod graetz;
 mod laminar_reactor;
+mod page;
 mod plug_flow;
 mod polymers;
 mod rate_constants;
