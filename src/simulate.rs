@@ -11,7 +11,7 @@ use crate::model::plant::{self, Plant};
 use crate::results::axial::{self, Table};
 use crate::results::view::RunView;
 use crate::results::{Figure, HotSpot, Value, catalogue};
-use crate::spec::include::{FileFormat, ReadFile, load};
+use crate::spec::include::{FileFormat, Loaded, ReadFile, load};
 use crate::spec::{About, Block, Fields, Gathered, Key, Need, Node, Reader, Reported, SpecError, Takes, edit, like};
 use crate::units::Dimension;
 
@@ -99,7 +99,15 @@ pub const TOP: About = About {
 /// # Errors
 /// All mistakes that were found, in the order of the files.
 pub fn read_spec(name: &str, bytes: &[u8], read: ReadFile<'_>, sets: &[String]) -> Result<Spec, Vec<SpecError>> {
-    let root = resolved_tree(name, bytes, read, sets)?;
+    read_loaded(load(name, bytes, read, &[FileFormat::Spec])?, sets)
+}
+
+/// Reads a spec whose files are loaded and joined, with values set by path.
+///
+/// # Errors
+/// All mistakes that were found, in the order of the files.
+pub fn read_loaded(loaded: Loaded, sets: &[String]) -> Result<Spec, Vec<SpecError>> {
+    let root = resolved_tree(loaded.root, sets)?;
     let reader = Reader::new(sources(&root));
     let spec = read_tree(&reader, &root);
     let gathered = reader.end()?;
@@ -107,9 +115,8 @@ pub fn read_spec(name: &str, bytes: &[u8], read: ReadFile<'_>, sets: &[String]) 
     Ok(Spec { gathered, ..spec })
 }
 
-/// The tree of a spec with its parts joined, overrides and sets applied, and likes copied.
-fn resolved_tree(name: &str, bytes: &[u8], read: ReadFile<'_>, sets: &[String]) -> Result<Node, Vec<SpecError>> {
-    let mut root = load(name, bytes, read, &[FileFormat::Spec])?.root;
+/// A joined tree with overrides and sets applied, and likes copied.
+fn resolved_tree(mut root: Node, sets: &[String]) -> Result<Node, Vec<SpecError>> {
     let mut problems = edit::apply_override(&mut root);
     problems.extend(sets.iter().filter_map(|argument| edit::set_from_text(&mut root, argument).err()));
     problems.extend(like::resolve_likes(&mut root));
@@ -228,9 +235,8 @@ pub fn run(spec: &Spec, with_tables: bool) -> Result<Run, NumericsError> {
     let trajectory = integrate(&spec.plant)?;
     let view = RunView::new(&spec.plant, &trajectory);
     let mut figures = catalogue::figures(&view);
-    let hot_spot = HotSpot::of(&view, 0..view.sections.len());
     let read = &spec.gathered.warnings;
-    let warnings = warning::warnings(&view, &figures, &hot_spot, read, &spec.acknowledged);
+    let warnings = warning::warnings(&view, &figures, read, &spec.acknowledged);
     let open = warnings.iter().filter(|warning| warning.acknowledged.is_none()).count();
     #[expect(clippy::cast_precision_loss, reason = "warnings are few")]
     let count = Value::Number(open as f64);
@@ -247,5 +253,5 @@ pub fn run(spec: &Spec, with_tables: bool) -> Result<Run, NumericsError> {
     let tables =
         with_tables.then(|| Tables { along_z: axial::along_z(&view), over_z_and_r: axial::over_z_and_r(&view) });
     let work = trajectory.work;
-    Ok(Run { figures, hot_spot, end, accept, warnings, work, tables })
+    Ok(Run { figures, hot_spot: view.hot_spot.clone(), end, accept, warnings, work, tables })
 }

@@ -43,10 +43,7 @@ impl Problem {
     /// The numerics failed.
     #[must_use]
     pub fn of_numerics(error: &NumericsError) -> Self {
-        let show = |value: f64, dimension| {
-            let (number, unit) = units::show(value, dimension, 5);
-            format!("{number} {unit}").trim_end().to_owned()
-        };
+        let show = |value: f64, dimension| units::shown(value, dimension, 5);
         let (low, high) = error.temperatures;
         let message = format!(
             "the integration of section `{}` failed at z = {}: {} (last step {}, fluid from {} to {})",

@@ -17,6 +17,12 @@ use crate::model::number::Dual;
 /// Variables differentiated in one pass.
 const PASS: usize = 8;
 
+/// Room for one stream tube in dual numbers.
+struct DualRoom {
+    tube: Vec<Dual<PASS>>,
+    work: Workspace<Dual<PASS>>,
+}
+
 impl System<'_> {
     /// Shape of the Jacobian.
     #[must_use]
@@ -33,10 +39,11 @@ impl System<'_> {
     /// | blocks | `blocks` | per metre | block tridiagonal |
     pub fn jacobian(&self, state: &[f64], blocks: &mut Blocks) {
         blocks.clear();
-        let mut work: Workspace<Dual<PASS>> = self.material().workspace();
+        let work = self.material().workspace();
+        let mut room = DualRoom { tube: vec![Dual::variable(0.0, None); self.layout.n_vars()], work };
         self.with_profile(state, |profile, gains| {
             for i in 0..self.layout.n_tubes {
-                self.local(state, profile, gains.heat[i], i, &mut work, blocks);
+                self.local(state, profile, gains.heat[i], i, &mut room, blocks);
             }
             for i in 0..self.layout.n_tubes - 1 {
                 self.across_face(state, profile, i, blocks);
@@ -52,19 +59,18 @@ impl System<'_> {
         profile: &Profile,
         heat_gain: f64,
         i: usize,
-        work: &mut Workspace<Dual<PASS>>,
+        DualRoom { tube, work }: &mut DualRoom,
         blocks: &mut Blocks,
     ) {
         let n_vars = self.layout.n_vars();
         let values = &state[self.layout.tube(i)];
         let area = profile.geometry.areas[i];
         let per_flow = self.flows[i].recip();
-        let mut tube = vec![Dual::<PASS>::variable(0.0, None); n_vars];
         for first in (0..n_vars).step_by(PASS) {
             for (k, (dual, value)) in tube.iter_mut().zip(values).enumerate() {
                 *dual = Dual::variable(*value, k.checked_sub(first));
             }
-            let point = self.material().evaluate(&tube, work);
+            let point = self.material().evaluate(tube, work);
             let heat = self.heat_slopes(profile, heat_gain, i, &point);
             for column in first..n_vars.min(first + PASS) {
                 let slope = column - first;

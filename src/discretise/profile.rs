@@ -75,6 +75,12 @@ impl Profile {
         self.volume_flow() / self.geometry.area()
     }
 
+    /// Largest velocity over the mean; between faces too it is largest on one of them.
+    #[must_use]
+    pub fn velocity_ratio(&self) -> f64 {
+        self.geometry.velocities.iter().copied().fold(0.0, f64::max) / self.mean_velocity()
+    }
+
     /// ρ̄, mean over the cross-section, in kg/m³.
     #[must_use]
     pub fn mean_density(&self) -> f64 {

@@ -65,24 +65,20 @@ impl<'p> System<'p> {
     /// | n, μ, T, integrals | `state` | mol/kg, K, … | `layout` |
     /// | their slopes | `slopes` | per metre | `layout` |
     pub fn slopes(&self, state: &[f64], slopes: &mut [f64]) {
-        let room = &mut *self.room.borrow_mut();
-        let Room { profile, gains, tubes } = room;
-        self.balance(state, profile, gains, tubes);
-        self.divide(profile, gains, slopes);
-        self.integrands(state, profile, slopes);
+        self.with_profile(state, |profile, gains| {
+            self.divide(profile, gains, slopes);
+            self.integrands(state, profile, slopes);
+        });
     }
 
     /// The cross-section of a state.
     #[must_use]
     pub fn profile(&self, state: &[f64]) -> Profile {
-        let room = &mut *self.room.borrow_mut();
-        let Room { profile, gains, tubes } = room;
-        self.balance(state, profile, gains, tubes);
-        profile.clone()
+        self.with_profile(state, |profile, _| profile.clone())
     }
 
-    /// Runs `use_profile` on the cross-section of a state, without copying it.
-    pub(super) fn with_profile<T>(&self, state: &[f64], use_profile: impl FnOnce(&Profile, &Gains) -> T) -> T {
+    /// Runs `use_profile` on the cross-section of a state and what each tube gains, without copying them.
+    pub fn with_profile<T>(&self, state: &[f64], use_profile: impl FnOnce(&Profile, &Gains) -> T) -> T {
         let room = &mut *self.room.borrow_mut();
         let Room { profile, gains, tubes } = room;
         self.balance(state, profile, gains, tubes);
@@ -112,12 +108,10 @@ impl<'p> System<'p> {
     /// Properties and sources of every stream tube.
     fn evaluate_tubes(&self, state: &[f64], profile: &mut Profile, room: &mut TubeRoom) {
         let material = self.material();
-        Tubes { material, layout: &self.layout, flows: &self.flows, state }.evaluate(room, profile);
+        let tubes = Tubes { material, layout: &self.layout, flows: &self.flows, state };
+        tubes.evaluate(room, profile);
         if self.plant.flow.viscous_heating {
-            let mut fractions = vec![0.0; material.n_components()];
-            for i in 0..self.layout.n_tubes {
-                profile.expansions[i] = material.expansion(&state[self.layout.tube(i)], &mut fractions);
-            }
+            tubes.expand(room, profile);
         }
     }
 

@@ -105,6 +105,14 @@ impl Tubes<'_> {
         }
     }
 
+    /// αᵢ of every stream tube into a profile.
+    pub fn expand(&self, room: &mut TubeRoom, profile: &mut Profile) {
+        for (i, expansion) in profile.expansions.iter_mut().enumerate() {
+            let tube = &self.state[self.layout.tube(i)];
+            *expansion = self.material.expansion(tube, &mut room.single.fractions);
+        }
+    }
+
     #[inline(always)]
     fn store(
         &self,

@@ -170,18 +170,21 @@ impl<'r, 'p> Recorder<'r, 'p> {
     ) -> Result<Option<End>, DiffsolError> {
         let here = solver.state().t;
         let start = self.before[1].0;
-        let found = match reason {
-            OdeSolverStopReason::RootFound(z, _) => Some(*z),
+        let (found, at_found) = match reason {
+            OdeSolverStopReason::RootFound(z, _) => (Some(*z), self.state_at(solver, *z)?),
             OdeSolverStopReason::TstopReached | OdeSolverStopReason::InternalTimestep => {
-                // an event function that begins at exactly 0 never changes its sign
                 let at_end = self.state_at(solver, here)?;
-                let is_left = self.limits.iter().any(|limit| limit.distance(self.system, &at_end) < 0.0);
-                if is_left { Some(self.crossing(solver, start, here)?) } else { None }
+                // an event function that begins at exactly 0 never changes its sign
+                if self.is_left(&at_end) {
+                    let z = self.crossing(solver, start, here)?;
+                    (Some(z), self.state_at(solver, z)?)
+                } else {
+                    (None, at_end)
+                }
             }
         };
-        let last = found.unwrap_or(here);
-        let at_last = self.state_at(solver, last)?;
-        let crossed = self.follow_peak(solver, last, hottest(self.system, &at_last))?.or(found);
+        let hottest = hottest(self.system, &at_found);
+        let crossed = self.follow_peak(solver, found.unwrap_or(here), hottest)?.or(found);
         let last = crossed.unwrap_or(here);
         while let Some(z) = self.targets.get(self.next).copied().filter(|z| *z <= last) {
             let state = self.state_at(solver, z)?;
@@ -197,6 +200,11 @@ impl<'r, 'p> Recorder<'r, 'p> {
             return Ok(Some(Some(limit)));
         }
         Ok(matches!(reason, OdeSolverStopReason::TstopReached).then_some(None))
+    }
+
+    /// Whether a state is beyond some limit.
+    fn is_left(&self, state: &[f64]) -> bool {
+        self.limits.iter().any(|limit| limit.distance(self.system, state) < 0.0)
     }
 
     /// The limit that a state is nearest to, or farthest beyond.
@@ -222,7 +230,7 @@ impl<'r, 'p> Recorder<'r, 'p> {
         let tolerance = PLACE_TOLERANCE * self.system.section.length;
         let mut warmth = |z: f64| -> Result<f64, DiffsolError> {
             let state = self.state_at(solver, z)?;
-            Ok(self.system.profile(&state).peak_temperature().value)
+            Ok(self.system.with_profile(&state, |profile, _| profile.peak_temperature().value))
         };
         let (mut low, mut high) = (first.0, z);
         let (mut a, mut b) = (high - GOLDEN * (high - low), low + GOLDEN * (high - low));
@@ -240,8 +248,7 @@ impl<'r, 'p> Recorder<'r, 'p> {
         }
         let top = 0.5 * (low + high);
         let state = self.state_at(solver, top)?;
-        let is_left = self.limits.iter().any(|limit| limit.distance(self.system, &state) < 0.0);
-        let crossed = if is_left { Some(self.crossing(solver, first.0, top)?) } else { None };
+        let crossed = if self.is_left(&state) { Some(self.crossing(solver, first.0, top)?) } else { None };
         self.peaks.push(Station { z: top, state });
         Ok(crossed)
     }
@@ -257,7 +264,7 @@ impl<'r, 'p> Recorder<'r, 'p> {
         while outside - inside > tolerance {
             let middle = 0.5 * (inside + outside);
             let state = self.state_at(solver, middle)?;
-            if self.limits.iter().any(|limit| limit.distance(self.system, &state) < 0.0) {
+            if self.is_left(&state) {
                 outside = middle;
             } else {
                 inside = middle;
@@ -272,7 +279,7 @@ fn hottest(system: &System<'_>, state: &[f64]) -> f64 {
     let (_, hottest) = temperatures(system, state);
     let outside = system.section.wall.outside();
     if outside.resistance.is_finite() && outside.temperature > hottest {
-        return hottest.max(system.profile(state).wall.temperature);
+        return system.with_profile(state, |profile, _| hottest.max(profile.wall.temperature));
     }
     hottest
 }

@@ -2,10 +2,6 @@
 
 use crate::discretise::layout::Integral;
 use crate::discretise::rhs::System;
-use crate::model::kinetics::Scheme;
-
-/// Polymer below this mass fraction has no dispersity worth a limit (model page, §7).
-const LEAST_POLYMER: f64 = 1e-9;
 
 /// A limit that a run may leave.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -70,6 +66,7 @@ impl Limit {
     pub fn distance(&self, system: &System<'_>, state: &[f64]) -> f64 {
         let layout = &system.layout;
         let temperatures = || (0..layout.n_tubes).map(|i| state[layout.temperature(i)]);
+        let tubes = || (0..layout.n_tubes).map(|i| &state[layout.tube(i)]);
         let below = |values: &mut dyn Iterator<Item = f64>, bound: f64| 1.0 - values.fold(0.0, f64::max) / bound;
         match *self {
             Self::LowestTemperature(bound) => temperatures().fold(f64::INFINITY, f64::min) / bound - 1.0,
@@ -79,31 +76,14 @@ impl Limit {
                 (at_inlet - lost - lowest) / at_inlet
             }
             Self::HighestViscosity(bound) => {
-                let profile = system.profile(state);
-                below(&mut profile.viscosities.iter().copied(), bound)
+                system.with_profile(state, |profile, _| below(&mut profile.viscosities.iter().copied(), bound))
             }
             Self::HighestPolymerFraction(bound) => {
-                below(&mut (0..layout.n_tubes).map(|i| polymer_fraction(system, state, i)), bound)
+                below(&mut tubes().filter_map(|tube| system.material().polymer_fraction(tube)), bound)
             }
             Self::HighestDispersity(bound) => {
-                below(&mut (0..layout.n_tubes).map(|i| dispersity(system, state, i)), bound)
+                below(&mut tubes().filter_map(|tube| system.material().dispersity(tube)), bound)
             }
         }
-    }
-}
-
-fn polymer_fraction(system: &System<'_>, state: &[f64], i: usize) -> f64 {
-    let tube = &state[system.layout.tube(i)];
-    let small = tube.iter().zip(&system.material().molar_masses).map(|(n, mass)| n * mass);
-    1.0 - small.sum::<f64>()
-}
-
-fn dispersity(system: &System<'_>, state: &[f64], i: usize) -> f64 {
-    let n = system.layout.n_species;
-    let tube = &state[system.layout.tube(i)];
-    match system.material().chemistry.scheme {
-        Scheme::None => 1.0,
-        Scheme::FreeRadical(_) if polymer_fraction(system, state, i) < LEAST_POLYMER => 1.0,
-        Scheme::FreeRadical(_) => tube[n + 2] * tube[n] / (tube[n + 1] * tube[n + 1]),
     }
 }

@@ -4,7 +4,7 @@ use crate::model::plant::Plant;
 use crate::results::catalogue::{Slot, slots};
 use crate::results::{Figure, Value};
 use crate::spec::{About, Block, Bound, Key, Need, Place, Reported, SpecError, Takes, unknown_name};
-use crate::units::{self, Dimension};
+use crate::units::Dimension;
 
 /// The bounds of one quantity.
 pub const ABOUT: About = About {
@@ -153,20 +153,6 @@ impl Limit {
         };
         Judged { limit: self.clone(), value, verdict }
     }
-
-    /// The bound in words: `at least 40 %`.
-    #[must_use]
-    pub fn bound_in_words(&self, digits: usize) -> String {
-        let show = |value: f64| {
-            let (number, unit) = units::show(value, self.dimension, digits);
-            format!("{number} {unit}").trim_end().to_owned()
-        };
-        match &self.bound {
-            Bar::AtLeast(value) => format!("at least {}", show(*value)),
-            Bar::AtMost(value) => format!("at most {}", show(*value)),
-            Bar::Is(word) => format!("is {word}"),
-        }
-    }
 }
 
 /// The mistake that no quantity has this name: one that ends or begins like it is proposed first.
@@ -201,7 +187,7 @@ fn read_one(block: &Block<'_>, name: &str, slot: Option<&Slot>) -> Result<Vec<Li
         let bound = fields.optional_quantity(key).unwrap_or(0.0);
         if slot.is_some_and(Slot::is_fraction) && bound > 1.0 {
             let at = fields.place_of(key);
-            let text = at.location.source.text[at.location.bytes.clone()].to_owned();
+            let text = at.location.text().to_owned();
             fields.problem(SpecError::FractionAboveOne { at, key: key.to_owned(), text });
         }
     }

@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 
 use crate::results::view::{RunView, StationView};
-use crate::results::{Figure, HotSpot};
+use crate::results::{Figure, Site};
 use crate::spec::{Block, ReadWarning, Reported, unknown_name};
 use crate::units::{self, Dimension};
 
@@ -121,7 +121,6 @@ pub fn read_acknowledged(block: &Block<'_>) -> Result<BTreeMap<String, String>, 
 pub fn warnings(
     run: &RunView<'_>,
     figures: &[Figure],
-    hot_spot: &HotSpot,
     read: &[ReadWarning],
     acknowledged: &BTreeMap<String, String>,
 ) -> Vec<Warning> {
@@ -130,7 +129,8 @@ pub fn warnings(
     found.extend(turbulence(run).map(|text| ("not_laminar", text)));
     found.extend(channelling(run).map(|text| ("channelling", text)));
     found.extend(slow_radicals(run).map(|text| ("quasi_steady_radicals", text)));
-    if hot_spot.note.is_some_and(|note| note.contains("end")) && run.is_complete() {
+    let hot_spot = &run.hot_spot;
+    if hot_spot.site == Site::End && run.is_complete() {
         let text = format!("the hottest point lies at the end, z = {:.4} m", hot_spot.z);
         found.push(("hot_spot_at_end", text));
     }
@@ -145,11 +145,8 @@ pub fn warnings(
 fn laws_out_of_range(run: &RunView<'_>) -> Vec<String> {
     let stations = || run.stations().chain(run.peaks.iter().flatten());
     let low = stations().map(|s| s.profile.lowest_temperature()).fold(f64::INFINITY, f64::min);
-    let high = stations().map(|s| s.profile.peak_temperature().value).fold(f64::NEG_INFINITY, f64::max);
-    let show = |temperature| {
-        let (number, unit) = units::show(temperature, Dimension::TEMPERATURE, 4);
-        format!("{number} {unit}")
-    };
+    let high = stations().map(|s| s.peak.value).fold(f64::NEG_INFINITY, f64::max);
+    let show = |temperature| units::shown(temperature, Dimension::TEMPERATURE, 4);
     let outside = |(path, (from, to)): (String, (f64, f64))| {
         (low < from || high > to).then(|| {
             format!(
@@ -179,10 +176,7 @@ fn turbulence(run: &RunView<'_>) -> Option<String> {
 
 /// The largest velocity over the mean, where the fluid runs as a core through a layer at the wall.
 fn channelling(run: &RunView<'_>) -> Option<String> {
-    let ratio = |station: &StationView<'_>| {
-        let largest = station.profile.geometry.velocities.iter().copied().fold(0.0, f64::max);
-        (largest / station.profile.mean_velocity(), station.z)
-    };
+    let ratio = |station: &StationView<'_>| (station.profile.velocity_ratio(), station.z);
     let (largest, z) = run.stations().map(ratio).max_by(|a, b| a.0.total_cmp(&b.0))?;
     (largest > CHANNEL).then(|| {
         format!(

@@ -83,6 +83,7 @@ pub(super) fn check_limits_apply(fields: &Fields<'_>, material: &Material, feed:
     refuse("dispersity", material.has_polymer(), "a `polymerization`");
 }
 
+/// A feed beyond a limit would end the run before it begins.
 pub(super) fn check_feed_within_limits(fields: &Fields<'_>, feed: &Feed, limits: &Limits) {
     let temperature = feed.temperature();
     let outside = temperature < limits.lowest_temperature || temperature > limits.highest_temperature;
@@ -114,8 +115,7 @@ pub(super) fn check_size(fields: &Fields<'_>, material: &Material, tubes: usize,
     if stations * unknowns <= MOST_KEPT {
         return;
     }
-    let place = fields.child("output").and_then(|output| output.child_of("stations")).map(|child| child.place());
-    let at = place.unwrap_or_else(|| fields.place_of("numerics"));
+    let at = fields.place_in("output", "stations");
     let bound = format!("at most {} with {unknowns} unknowns", MOST_KEPT / unknowns);
     let (key, text) = ("output.stations".to_owned(), stations.to_string());
     fields.problem(SpecError::OutOfBounds { at, key, text, bound });

@@ -7,10 +7,11 @@ use super::kinetics::free_radical::Local;
 use super::kinetics::{Chemistry, Scheme};
 use super::mixture::Mixture;
 use super::number::Number;
+use super::property::inverse;
 use super::rheology::Fluid;
 
-/// Temperatures below this are held there before 1/T is taken: no liquid is colder, in K.
-const COLDEST: f64 = 20.0;
+/// Polymer below this mass fraction has no molar mass (model page, §7).
+pub const LEAST_POLYMER: f64 = 1e-9;
 /// Reference of enthalpies, in K; it drops out of every balance.
 pub const ENTHALPY_REFERENCE: f64 = 298.15;
 /// Added to μ₂ and μ₁ inside a viscosity law, so that M_w is finite without polymer in mol/kg (model page, §5).
@@ -162,6 +163,38 @@ impl Material {
         Fluid { temperature: state[self.n_amounts()], polymer_fraction, molar_mass: self.smooth_molar_mass(state) }
     }
 
+    /// What the chemistry sees of a state whose mass fractions and concentrations are known.
+    #[inline(always)]
+    fn local<'w, N: Number>(&self, state: &[N], fractions: &[N], concentrations: &'w [N]) -> Local<'w, N> {
+        let temperature = state[self.n_amounts()];
+        let (polymer_fraction, monomer_fraction) = match &self.chemistry.scheme {
+            Scheme::None => (N::constant(0.0), N::constant(0.0)),
+            Scheme::FreeRadical(scheme) => (fractions[self.n_species()], fractions[scheme.monomer]),
+        };
+        Local { concentrations, temperature, inverse: inverse(temperature), polymer_fraction, monomer_fraction }
+    }
+
+    /// w_p of a stream tube or a mixing cup, where there is a polymer.
+    #[must_use]
+    pub fn polymer_fraction(&self, amounts: &[f64]) -> Option<f64> {
+        let small = amounts.iter().zip(&self.molar_masses).map(|(n, mass)| n * mass);
+        self.has_polymer().then(|| 1.0 - small.sum::<f64>())
+    }
+
+    /// μ₀, μ₁, μ₂ of a stream tube or a mixing cup, where there is polymer enough to speak of, in mol/kg.
+    #[must_use]
+    pub fn moments<'s>(&self, amounts: &'s [f64]) -> Option<&'s [f64]> {
+        let enough = self.polymer_fraction(amounts)? >= LEAST_POLYMER;
+        enough.then(|| &amounts[self.n_species()..self.n_amounts()])
+    }
+
+    /// M_w/M_n = μ₂ μ₀/μ₁² of a stream tube or a mixing cup, where there is polymer enough to speak of.
+    #[must_use]
+    pub fn dispersity(&self, amounts: &[f64]) -> Option<f64> {
+        let moments = self.moments(amounts)?;
+        Some(moments[2] * moments[0] / (moments[1] * moments[1]))
+    }
+
     /// α = −(1/ρ) ∂ρ/∂T of a stream tube at fixed composition, in 1/K.
     pub fn expansion(&self, state: &[f64], fractions: &mut [f64]) -> f64 {
         self.fractions(state, fractions);
@@ -175,15 +208,8 @@ impl Material {
         let Scheme::FreeRadical(scheme) = &self.chemistry.scheme else { return None };
         let mut work = self.workspace();
         self.evaluate(state, &mut work);
-        let temperature = state[self.n_amounts()];
-        let local = Local {
-            concentrations: &work.concentrations,
-            temperature,
-            inverse: temperature.max(COLDEST).recip(),
-            polymer_fraction: work.fractions[self.n_species()],
-            monomer_fraction: work.fractions[scheme.monomer],
-        };
         let mut sources = vec![0.0; self.n_amounts()];
+        let local = self.local(state, &work.fractions, &work.concentrations);
         Some(scheme.radicals(&local, &mut sources).lifetime())
     }
 
@@ -211,23 +237,13 @@ impl Material {
     #[inline(always)]
     pub fn evaluate<N: Number>(&self, state: &[N], work: &mut Workspace<N>) -> Point<N> {
         let temperature = state[self.n_amounts()];
-        let inverse = temperature.at_least(COLDEST).recip();
         self.fractions(state, &mut work.fractions);
         let density = self.mixture.density(&work.fractions, temperature);
         for (c, n) in work.concentrations.iter_mut().zip(state) {
             *c = density * *n;
         }
         let fluid = self.fluid(state, &work.fractions);
-        let local = Local {
-            concentrations: &work.concentrations,
-            temperature,
-            inverse,
-            polymer_fraction: fluid.polymer_fraction,
-            monomer_fraction: match &self.chemistry.scheme {
-                Scheme::None => N::constant(0.0),
-                Scheme::FreeRadical(scheme) => work.fractions[scheme.monomer],
-            },
-        };
+        let local = self.local(state, &work.fractions, &work.concentrations);
         let reaction_heat = self.chemistry.changes(&local, &mut work.sources);
         Point {
             density,

@@ -107,11 +107,6 @@ struct Shared {
 }
 
 impl Shared {
-    /// One law for every component.
-    fn of_all(law: Property, n_components: usize) -> Self {
-        Self { groups: vec![(law, (0..n_components).collect())] }
-    }
-
     fn grouped(laws: Vec<Property>) -> Self {
         let mut groups: Vec<(Property, Vec<usize>)> = Vec::new();
         for (k, law) in laws.into_iter().enumerate() {
@@ -250,16 +245,13 @@ impl MixtureBlock {
             Some(laws) if laws.windows(2).all(|pair| pair[0] == pair[1]) => Diffusivity::One(laws[0].clone()),
             Some(laws) => Diffusivity::Each(laws),
         };
-        let n = components.len();
-        let grouped = |laws: Option<Vec<Property>>| {
-            laws.map_or_else(|| Shared::of_all(Property::constant(0.0), n), Shared::grouped)
-        };
+        let grouped = |laws: Option<Vec<Property>>| laws.map(Shared::grouped).ok_or(Reported);
         let of_viscosity = self.viscosity.as_ref().map(Viscosity::ranges).unwrap_or_default();
         ranges.extend(of_viscosity.into_iter().map(|(key, range)| (format!("mixture.viscosity{key}"), range)));
         Ok(Mixture {
-            density: grouped(density),
-            heat_capacity: grouped(heat_capacity),
-            conductivity: grouped(conductivity),
+            density: grouped(density)?,
+            heat_capacity: grouped(heat_capacity)?,
+            conductivity: grouped(conductivity)?,
             diffusivity,
             viscosity: self.viscosity.clone(),
             ranges,

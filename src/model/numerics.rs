@@ -109,7 +109,7 @@ impl Numerics {
         let fields = block.open(&ABOUT);
         let outside = |key: &'static str, bound: String| {
             let at = fields.place_of(key);
-            let text = at.location.source.text[at.location.bytes.clone()].to_owned();
+            let text = at.location.text().to_owned();
             fields.problem(SpecError::OutOfBounds { at, key: key.to_owned(), text, bound });
         };
         let stream_tubes = fields.whole("stream_tubes");

@@ -3,7 +3,7 @@
 use super::figures::{of_run, range, reason, shown};
 use super::page::{Page, glued};
 use crate::model::wall::Wall;
-use crate::results::HotSpot;
+use crate::results::{HotSpot, Site};
 use crate::simulate::{Run, Spec};
 use crate::units::Dimension;
 
@@ -29,7 +29,7 @@ fn hot_spot_sentence(spec: &Spec, spot: &HotSpot) -> String {
     let temperature = glued(&shown("", spot.temperature, Dimension::TEMPERATURE));
     let across = match spot.position {
         position if position < AXIS => "on the axis".to_owned(),
-        _ if spot.note == Some("at the wall") => format!("at the wall (r = {})", length(spot.r)),
+        _ if spot.site == Site::Wall => format!("at the wall (r = {})", length(spot.r)),
         position => {
             let position = shown("hot_spot.position", position, Dimension::RATIO);
             format!("at r = {} (r/R = {position})", length(spot.r))
@@ -48,10 +48,12 @@ fn hot_spot_sentence(spec: &Spec, spot: &HotSpot) -> String {
         sentence.push_str(&format!("; local conversion {}", glued(&shown("", conversion, Dimension::RATIO))));
     }
     sentence.push('.');
-    match spot.note {
-        Some(note) if note != "at the wall" => format!("{sentence} It lies {note}."),
-        _ => sentence,
+    match spot.site {
+        Site::Inside | Site::Wall => {}
+        Site::Inlet => sentence.push_str(" It lies at the inlet."),
+        Site::End => sentence.push_str(" It lies at the end: it may be hotter beyond."),
     }
+    sentence
 }
 
 /// What the rise of a hot spot is counted from.

@@ -1,8 +1,6 @@
 //! The hottest point of the fluid over z and r, wall surface included (model page, §7).
 
-use std::ops::Range;
-
-use super::view::{RunView, StationView};
+use super::view::StationView;
 
 /// r/R this close to 1 is the wall itself.
 const ROUNDING: f64 = 1e-12;
@@ -24,33 +22,44 @@ pub struct HotSpot {
     pub conversion: Option<f64>,
     /// T less that of the coolant or wall there, in K.
     pub rise: Option<f64>,
-    /// Where it lies in plain words, if at an end or at the wall.
-    pub note: Option<&'static str>,
+    /// Whether it lies at an edge.
+    pub site: Site,
+}
+
+/// Where a hot spot lies: at the wall before at an end.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Site {
+    /// Away from all edges.
+    Inside,
+    /// On the wetted surface of the wall.
+    Wall,
+    /// At the inlet.
+    Inlet,
+    /// At the end of the run or section: it may be hotter beyond.
+    End,
 }
 
 impl HotSpot {
     /// The hottest point of some sections: of all recorded stations, and of the local maxima along z that were
     /// found on the integrator's interpolant.
     #[must_use]
-    pub fn of(run: &RunView<'_>, sections: Range<usize>) -> Self {
-        let first = sections.start;
-        let last = sections.end - 1;
-        let all = sections.flat_map(|s| run.sections[s].iter().chain(&run.peaks[s]));
-        let peaks = all.map(|station| (station, station.profile.peak_temperature()));
-        let (station, peak) = peaks
-            .reduce(|best, next| if next.1.value > best.1.value { next } else { best })
+    pub fn of(sections: &[Vec<StationView<'_>>], peaks: &[Vec<StationView<'_>>]) -> Self {
+        let all = sections.iter().zip(peaks).flat_map(|(stations, peaks)| stations.iter().chain(peaks));
+        let station = all
+            .reduce(|best, next| if next.peak.value > best.peak.value { next } else { best })
             .expect("the inlet is always recorded");
+        let peak = station.peak;
         let section = station.leg.system.section;
         let position = peak.r / section.duct.tube.radius;
         let conversion = local_conversion(station, position);
         let reference = section.wall.reference_temperature();
-        let inlet = run.sections[first].first().map_or(f64::NAN, |station| station.z);
-        let outlet = run.sections[last].last().map_or(f64::NAN, |station| station.z);
-        let note = match station.z {
-            _ if position >= 1.0 - ROUNDING => Some("at the wall"),
-            z if z <= inlet => Some("at the inlet"),
-            z if z >= outlet => Some("at the end: it may be hotter beyond"),
-            _ => None,
+        let inlet = sections.first().and_then(|stations| stations.first()).map_or(f64::NAN, |station| station.z);
+        let outlet = sections.last().and_then(|stations| stations.last()).map_or(f64::NAN, |station| station.z);
+        let site = match station.z {
+            _ if position >= 1.0 - ROUNDING => Site::Wall,
+            z if z <= inlet => Site::Inlet,
+            z if z >= outlet => Site::End,
+            _ => Site::Inside,
         };
         Self {
             temperature: peak.value,
@@ -60,7 +69,7 @@ impl HotSpot {
             section: section.name.clone(),
             conversion,
             rise: reference.map(|reference| peak.value - reference),
-            note,
+            site,
         }
     }
 }

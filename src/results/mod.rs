@@ -11,4 +11,4 @@ mod state_quantities;
 pub mod view;
 
 pub use self::figure::{Figure, Value};
-pub use self::hot_spot::HotSpot;
+pub use self::hot_spot::{HotSpot, Site};

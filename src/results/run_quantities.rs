@@ -66,7 +66,7 @@ pub const RUN: &[Quantity] = &[
         name: "hot_spot.section",
         dimension: Dimension::RATIO,
         about: "section that the hot spot lies in",
-        at: At::Run { value: |run, scope| Value::Word(hot_spot(run, scope).section), in_sections: false },
+        at: At::Run { value: |run, scope| Value::Word(hot_spot(run, scope).section.clone()), in_sections: false },
     },
     Quantity {
         name: "hot_spot.conversion",
@@ -230,6 +230,9 @@ fn extreme(
     Value::number_or(values.reduce(pick), "the profile has no shear, or no viscosity is given")
 }
 
-fn hot_spot(run: &RunView<'_>, scope: Scope) -> HotSpot {
-    HotSpot::of(run, scope.sections(run))
+fn hot_spot<'r>(run: &'r RunView<'_>, scope: Scope) -> &'r HotSpot {
+    match scope {
+        Scope::Run => &run.hot_spot,
+        Scope::Section(s) => &run.section_hot_spots[s],
+    }
 }

@@ -3,7 +3,8 @@
 use super::catalogue::{At, Local, Quantity};
 use super::figure::Value;
 use super::spread::percentile;
-use super::view::{LEAST_POLYMER, NO_VISCOSITY, StationView};
+use super::view::{NO_VISCOSITY, StationView};
+use crate::model::local::LEAST_POLYMER;
 use crate::units::Dimension;
 
 const NO_REACTANT: &str = "no reactant is named and nothing is consumed";
@@ -28,7 +29,7 @@ pub const STATE: &[Quantity] = &[
         name: "highest_temperature",
         dimension: Dimension::TEMPERATURE,
         about: "highest temperature over the cross-section, wall surface included, between stream tubes too",
-        at: At::Place { cup: |s, _| number(s.profile.peak_temperature().value), local: None, spread: false },
+        at: At::Place { cup: |s, _| number(s.peak.value), local: None, spread: false },
     },
     Quantity {
         name: "lowest_temperature",
@@ -81,8 +82,8 @@ pub const STATE: &[Quantity] = &[
         dimension: Dimension::RATIO,
         about: "mass fraction of the polymer: what the small species leave, initiator's fragments included",
         at: At::Place {
-            cup: |s, _| Value::number_or(s.polymer_fraction(&s.cup.state), "nothing polymerizes"),
-            local: Some(|s, i, _| s.polymer_fraction(s.tube(i))),
+            cup: |s, _| Value::number_or(s.material().polymer_fraction(&s.cup.state), "nothing polymerizes"),
+            local: Some(|s, i, _| s.material().polymer_fraction(s.tube(i))),
             spread: false,
         },
     },
@@ -111,8 +112,8 @@ pub const STATE: &[Quantity] = &[
         dimension: Dimension::RATIO,
         about: "M_w/M_n",
         at: At::Place {
-            cup: |s, _| Value::number_or(dispersity(s, &s.cup.state), NO_POLYMER),
-            local: Some(|s, i, _| dispersity(s, s.tube(i))),
+            cup: |s, _| Value::number_or(s.material().dispersity(&s.cup.state), NO_POLYMER),
+            local: Some(|s, i, _| s.material().dispersity(s.tube(i))),
             spread: true,
         },
     },
@@ -129,7 +130,7 @@ pub const STATE: &[Quantity] = &[
         at: At::Place {
             cup: |s, _| {
                 let flow: f64 = s.leg.system.flows.iter().sum();
-                Value::number_or(s.polymer_fraction(&s.cup.state).map(|w| w * flow), "nothing polymerizes")
+                Value::number_or(s.material().polymer_fraction(&s.cup.state).map(|w| w * flow), "nothing polymerizes")
             },
             local: None,
             spread: false,
@@ -171,7 +172,7 @@ pub const STATE: &[Quantity] = &[
         name: "velocity_ratio",
         dimension: Dimension::RATIO,
         about: "largest velocity over the mean",
-        at: At::Place { cup: |s, _| number(velocity_ratio(s)), local: None, spread: false },
+        at: At::Place { cup: |s, _| number(s.profile.velocity_ratio()), local: None, spread: false },
     },
     Quantity {
         name: "pressure_gradient",
@@ -229,24 +230,14 @@ fn local_conversion(station: &StationView<'_>, i: usize, _: usize) -> Option<f64
 
 /// M_n = m0 μ₁/μ₀, in kg/mol.
 fn number_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
-    let moments = station.moments(amounts)?;
+    let moments = station.material().moments(amounts)?;
     Some(station.material().unit_mass() * moments[1] / moments[0])
 }
 
 /// M_w = m0 μ₂/μ₁, in kg/mol.
 fn weight_average(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
-    let moments = station.moments(amounts)?;
+    let moments = station.material().moments(amounts)?;
     Some(station.material().unit_mass() * moments[2] / moments[1])
-}
-
-fn dispersity(station: &StationView<'_>, amounts: &[f64]) -> Option<f64> {
-    Some(weight_average(station, amounts)? / number_average(station, amounts)?)
-}
-
-/// Largest velocity over the mean; between faces too it is largest on one of them.
-fn velocity_ratio(station: &StationView<'_>) -> f64 {
-    let largest = station.profile.geometry.velocities.iter().copied().fold(0.0, f64::max);
-    largest / station.profile.mean_velocity()
 }
 
 /// A quantity at one place: of the mixing cup, or local where a position is given.

@@ -1,18 +1,16 @@
 //! A run seen place by place: the cross-section, the mixing cup and the wall at each recorded station.
 
 use super::figure::Value;
+use super::hot_spot::HotSpot;
 use crate::discretise::cup::{CupState, cup_state};
 use crate::discretise::layout::Integral;
+use crate::discretise::point_values::Peak;
 use crate::discretise::profile::Profile;
 use crate::integrate::chain::{SectionLeg, Trajectory};
 use crate::integrate::march::Station;
 use crate::model::flow;
-use crate::model::kinetics::Scheme;
 use crate::model::local::Material;
 use crate::model::plant::Plant;
-
-/// Polymer below this mass fraction has no molar mass (model page, §7).
-pub const LEAST_POLYMER: f64 = 1e-9;
 
 /// One place along a run.
 #[derive(Debug)]
@@ -27,6 +25,8 @@ pub struct StationView<'a> {
     pub state: &'a [f64],
     /// The cross-section.
     pub profile: Profile,
+    /// The hottest point of the cross-section.
+    pub peak: Peak,
     /// The mixing cup.
     pub cup: CupState,
 }
@@ -36,12 +36,14 @@ impl<'a> StationView<'a> {
     #[must_use]
     pub fn new(plant: &'a Plant, leg: &'a SectionLeg<'a>, station: &'a Station) -> Self {
         let system = &leg.system;
+        let profile = system.profile(&station.state);
         Self {
             plant,
             leg,
             z: leg.start + station.z,
             state: &station.state,
-            profile: system.profile(&station.state),
+            peak: profile.peak_temperature(),
+            profile,
             cup: cup_state(&plant.material, &system.layout, &system.flows, &station.state),
         }
     }
@@ -75,25 +77,6 @@ impl<'a> StationView<'a> {
     pub fn conversion(&self, species: usize, amounts: &[f64]) -> Option<f64> {
         let fed = self.plant.feed.state[species];
         (fed > 0.0).then(|| 1.0 - amounts[species] / fed)
-    }
-
-    /// w_p in a state of one tube or of the cup, where there is a polymer.
-    #[must_use]
-    pub fn polymer_fraction(&self, amounts: &[f64]) -> Option<f64> {
-        let material = self.material();
-        let small = amounts.iter().zip(&material.molar_masses).map(|(n, mass)| n * mass);
-        material.has_polymer().then(|| 1.0 - small.sum::<f64>())
-    }
-
-    /// Moments of a state of one tube or of the cup, where there is polymer enough to speak of.
-    #[must_use]
-    pub fn moments<'s>(&self, amounts: &'s [f64]) -> Option<&'s [f64]> {
-        let n = self.material().n_species();
-        let enough = self.polymer_fraction(amounts)? >= LEAST_POLYMER;
-        match self.material().chemistry.scheme {
-            Scheme::None => None,
-            Scheme::FreeRadical(_) => enough.then(|| &amounts[n..n + 3]),
-        }
     }
 
     /// The stress at the wall, GR/2, where there is a viscosity, in Pa.
@@ -149,6 +132,10 @@ pub struct RunView<'a> {
     pub sections: Vec<Vec<StationView<'a>>>,
     /// Local maxima along z of the hottest point, of each section that was entered.
     pub peaks: Vec<Vec<StationView<'a>>>,
+    /// The hottest point of the run.
+    pub hot_spot: HotSpot,
+    /// The hottest point of each section that was entered.
+    pub section_hot_spots: Vec<HotSpot>,
 }
 
 impl<'a> RunView<'a> {
@@ -158,9 +145,13 @@ impl<'a> RunView<'a> {
         let views = |leg: &'a SectionLeg<'a>, stations: &'a [Station]| -> Vec<StationView<'a>> {
             stations.iter().map(|station| StationView::new(plant, leg, station)).collect()
         };
-        let sections = trajectory.legs.iter().map(|leg| views(leg, &leg.leg.stations)).collect();
-        let peaks = trajectory.legs.iter().map(|leg| views(leg, &leg.leg.peaks)).collect();
-        Self { plant, trajectory, sections, peaks }
+        let sections: Vec<Vec<StationView<'a>>> =
+            trajectory.legs.iter().map(|leg| views(leg, &leg.leg.stations)).collect();
+        let peaks: Vec<Vec<StationView<'a>>> = trajectory.legs.iter().map(|leg| views(leg, &leg.leg.peaks)).collect();
+        let hot_spot = HotSpot::of(&sections, &peaks);
+        let of_section = |s: usize| HotSpot::of(&sections[s..=s], &peaks[s..=s]);
+        let section_hot_spots = (0..sections.len()).map(of_section).collect();
+        Self { plant, trajectory, sections, peaks, hot_spot, section_hot_spots }
     }
 
     /// All stations, inlet first.

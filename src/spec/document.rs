@@ -158,7 +158,7 @@ mod tests {
 
     /// The texts that the locations of all values cover.
     fn covered(node: &Node) -> Vec<String> {
-        let own = node.location.source.text[node.location.bytes.clone()].to_owned();
+        let own = node.location.text().to_owned();
         let below: Vec<String> = match &node.value {
             Value::List(items) => items.iter().flat_map(covered).collect(),
             Value::Map(entries) => entries.iter().flat_map(|entry| covered(&entry.node)).collect(),

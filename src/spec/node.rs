@@ -93,8 +93,7 @@ impl Node {
     /// Whether the text stands in quotes.
     #[must_use]
     pub fn is_quoted(&self) -> bool {
-        let text = &self.location.source.text;
-        text.get(self.location.bytes.clone()).is_some_and(|typed| typed.starts_with(['"', '\'']))
+        self.location.text().starts_with(['"', '\''])
     }
 
     /// The scalar as typed, if this is one.

@@ -25,6 +25,12 @@ pub struct Location {
 }
 
 impl Location {
+    /// The text as typed.
+    #[must_use]
+    pub fn text(&self) -> &str {
+        self.source.text.get(self.bytes.clone()).unwrap_or_default()
+    }
+
     /// Line, counted from 1.
     #[must_use]
     pub fn line(&self) -> usize {

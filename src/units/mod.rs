@@ -23,6 +23,6 @@ pub use dimension::Dimension;
 pub use error::UnitError;
 pub use names::{column_suffix, example, symbol};
 pub use read::read;
-pub use show::{show, show_number};
+pub use show::{show, show_number, shown};
 pub use table::{Kind, Unit, all};
 pub use write::write;

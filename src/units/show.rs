@@ -145,14 +145,20 @@ fn at_least(size: f64, unit: &str, least: f64, dimension: Dimension) -> bool {
     read(&format!("{least} {unit}"), dimension).is_ok_and(|least| size >= least)
 }
 
+/// The same as one text: `85 degC`, `2.7` for a ratio above 1.
+#[must_use]
+pub fn shown(value: f64, dimension: Dimension, digits: usize) -> String {
+    let (number, unit) = show(value, dimension, digits);
+    format!("{number} {unit}").trim_end().to_owned()
+}
+
 #[cfg(test)]
 mod tests {
     use super::super::names::named;
     use super::*;
 
     fn shown(value: f64, dimension: Dimension) -> String {
-        let (number, unit) = show(value, dimension, 5);
-        format!("{number} {unit}").trim_end().to_owned()
+        super::shown(value, dimension, 5)
     }
 
     #[test]

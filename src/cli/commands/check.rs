@@ -45,15 +45,14 @@ fn check_one(file: &str, arguments: &Arguments, answer: &mut Answer<'_, '_>) {
         Err(errors) => return answer.refuse(file, &errors),
     };
     match loaded.format {
-        FileFormat::Spec => check_spec(file, &bytes, arguments, answer),
+        FileFormat::Spec => check_spec(file, loaded, arguments, answer),
         FileFormat::Part => check_part(file, &loaded, arguments, answer),
         FileFormat::Study => answer.refuse(file, &[no_study(&loaded.root)]),
     }
 }
 
-fn check_spec(file: &str, bytes: &[u8], arguments: &Arguments, answer: &mut Answer<'_, '_>) {
-    let mut read = |name: &str| input::read_part(name);
-    let spec = match simulate::read_spec(file, bytes, &mut read, &arguments.specs.sets) {
+fn check_spec(file: &str, loaded: Loaded, arguments: &Arguments, answer: &mut Answer<'_, '_>) {
+    let spec = match simulate::read_loaded(loaded, &arguments.specs.sets) {
         Ok(spec) => spec,
         Err(errors) => return answer.refuse(file, &errors),
     };

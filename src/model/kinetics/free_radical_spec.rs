@@ -300,7 +300,7 @@ fn read_thermal(block: &Block<'_>) -> Result<Thermal, Reported> {
     let order = fields.quantity("order");
     if order > HIGHEST_ORDER {
         let (at, key) = (fields.place_of("order"), "order".to_owned());
-        let text = at.location.source.text[at.location.bytes.clone()].to_owned();
+        let text = at.location.text().to_owned();
         fields.problem(SpecError::OutOfBounds { at, key, text, bound: format!("at most {HIGHEST_ORDER}") });
     }
     let rate_constant = fields

@@ -5,12 +5,10 @@ use crate::model::number::Number;
 use crate::spec::{About, Block, Bound, Fields, Key, Need, Reported, SpecError, Takes};
 use crate::units::Dimension;
 
-use super::{KIND, VALID};
+use super::{KIND, VALID, inverse};
 
 /// Exponents beyond this are held: e¹⁰⁰ lies far beyond any property or rate.
 const MAX_EXPONENT: f64 = 100.0;
-/// Temperatures below this are held there: no liquid is colder, in K.
-const COLDEST: f64 = 20.0;
 
 /// Keys of the two laws and of rate constants.
 const KEYS: &[Key] = &[
@@ -121,11 +119,11 @@ impl Arrhenius {
     /// | T | `temperature` | K | one stream tube |
     /// | y | returned | the property's | one stream tube |
     ///
-    /// The temperature is held above `COLDEST` and the exponent within ±`MAX_EXPONENT`, so that every trial
+    /// The temperature is held above the coldest liquid's and the exponent within ±`MAX_EXPONENT`, so that every trial
     /// state gets a finite value.
     #[inline(always)]
     pub fn at<N: Number>(&self, temperature: N) -> N {
-        self.at_inverse(temperature.at_least(COLDEST).recip())
+        self.at_inverse(inverse(temperature))
     }
 
     /// The same, with 1/T at hand.

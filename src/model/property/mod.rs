@@ -56,6 +56,15 @@ pub const RANGE: About = About {
     ],
 };
 
+/// Temperatures below this are held there before 1/T is taken: no liquid is colder, in K.
+const COLDEST: f64 = 20.0;
+
+/// 1/T, finite at every trial state, in 1/K.
+#[inline(always)]
+pub(in crate::model) fn inverse<N: Number>(temperature: N) -> N {
+    temperature.at_least(COLDEST).recip()
+}
+
 /// The kinds of law that any property may follow.
 pub const KINDS: &[&About] =
     &[&constant::ABOUT, &linear::ABOUT, &polynomial::ABOUT, &table::ABOUT, &arrhenius::ARRHENIUS, &arrhenius::ANDRADE];

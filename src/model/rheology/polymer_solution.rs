@@ -1,7 +1,7 @@
 //! Viscosity of a polymer in its monomer or solvent, by polymer content and molar mass.
 
 use crate::model::number::Number;
-use crate::model::property::{KIND, Property, VALID, coefficient_pairs, skip_range};
+use crate::model::property::{KIND, Property, VALID, coefficient_pairs, inverse, skip_range};
 use crate::spec::{About, Block, Bound, Key, Need, Reported, SpecError, Takes};
 use crate::units::Dimension;
 
@@ -9,8 +9,6 @@ use super::{Fluid, PLAIN_KINDS, SHEAR};
 
 /// e⁶⁰ Pa·s lies beyond any fluid that flows.
 const MAX_EXPONENT: f64 = 60.0;
-/// Temperatures below this are held there: no liquid is colder, in K.
-const COLDEST: f64 = 20.0;
 
 pub const ABOUT: About = About {
     kind: "polymer_solution",
@@ -128,7 +126,7 @@ impl PolymerSolution {
     /// The exponent is held within ±`MAX_EXPONENT`.
     #[inline(always)]
     pub fn zero_shear<N: Number>(&self, fluid: &Fluid<N>) -> N {
-        let inverse = fluid.temperature.at_least(COLDEST).recip();
+        let inverse = inverse(fluid.temperature);
         let base = match &self.base {
             Base::Coefficients(a, b) => inverse * *b + *a,
             Base::Solvent(law) => law.at(fluid.temperature).at_least((-MAX_EXPONENT).exp()).ln(),
